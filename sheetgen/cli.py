@@ -1,0 +1,249 @@
+"""The commands: read the command line, call the handbook, print. No physics, no HTML."""
+
+from __future__ import annotations
+
+import json
+import os
+import sys
+import traceback
+from collections.abc import Iterable, Sequence
+from pathlib import Path
+from typing import Any
+
+import click
+
+from sheetgen import __version__
+from sheetgen.faults import Fault, FaultsError, MachineError, did_you_mean
+from sheetgen.terminal import Argument, Command, Commands, ProgressLine, WrongWordError, with_example
+
+DONE, RECORDS, COMMAND_LINE, MACHINE, INTERRUPTED = 0, 1, 2, 3, 130
+MATERIALS = Path("materials")
+SITE = Path("site")
+
+
+def run(words: Sequence[str]) -> int:
+    """Run one command line and return its exit status; whatever went wrong is one clear line on stderr."""
+    show_traceback = "--traceback" in words
+    try:
+        return commands.main(list(words), prog_name="sheetgen", standalone_mode=False) or DONE
+    except (KeyboardInterrupt, click.Abort):
+        return _failed("stopped; what was published before still stands", INTERRUPTED)
+    except click.exceptions.NoArgsIsHelpError as error:
+        click.echo(error.format_message(), err=True)
+        return COMMAND_LINE
+    except click.UsageError as error:
+        return _failed(with_example(error), COMMAND_LINE)
+    except BrokenPipeError:
+        # Whoever reads our output has seen enough; nothing more may be written to it, not even at exit.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return DONE
+    except Exception as error:  # the last net: a person gets a line that helps, not a traceback
+        if show_traceback:
+            traceback.print_exc()
+        return _failed(_what_happened(error), MACHINE)
+
+
+def _failed(line: str, status: int) -> int:
+    click.echo(f"sheetgen: {line}", err=True)
+    return status
+
+
+def _what_happened(error: Exception) -> str:
+    if isinstance(error, MachineError):
+        return str(error)
+    if isinstance(error, OSError):
+        return f"{error.filename or 'the machine'}: {(error.strerror or str(error)).lower()}"
+    if isinstance(error, ModuleNotFoundError):
+        return f"the library '{error.name}' is not installed; install sheetgen again with what it needs"
+    if isinstance(error, MemoryError):
+        return "the memory of this machine does not suffice"
+    frame = traceback.extract_tb(error.__traceback__)[-1]
+    place = f"{Path(frame.filename).name}:{frame.lineno}"
+    return (
+        f"the program itself is at fault ({type(error).__name__} at {place}: {error}). "
+        "Add --traceback to see how it came about, and report it."
+    )
+
+
+def _version(context: click.Context, _option: click.Option, wanted: bool) -> None:
+    if wanted and not context.resilient_parsing:
+        from sheetgen.constants import CONSTANTS
+
+        click.echo(f"sheetgen {__version__}, constants {CONSTANTS}")
+        context.exit()
+
+
+def _folder_of_records(_context: click.Context, _parameter: click.Parameter, folder: Path) -> Path:
+    if folder.is_dir():
+        return folder
+    if folder.exists():
+        raise WrongWordError(f"{folder} is a file; expected the folder that holds it.")
+    beside = folder.parent.iterdir() if folder.parent.is_dir() else ()
+    guess = did_you_mean(folder.name, [entry.name for entry in beside if entry.is_dir()])
+    raise WrongWordError(f"There is no folder {folder}; expected the folder of records.{guess}")
+
+
+materials = click.argument(
+    "materials",
+    cls=Argument,
+    said="the folder of records: handbook.yaml, sources.bib, a YAML file a material [default: materials]",
+    type=click.Path(path_type=Path),
+    default=MATERIALS,
+    callback=_folder_of_records,
+)
+as_json = click.option("--json", "as_json", is_flag=True, help="Print the result as JSON.")
+with_traceback = click.option(
+    "--traceback", is_flag=True, expose_value=False, help="Show how an error of the program came about."
+)
+
+
+@click.group(
+    cls=Commands,
+    examples=["sheetgen press materials --into site", "sheetgen quote copper fermi_energy"],
+)
+@click.option(
+    "--version",
+    is_flag=True,
+    expose_value=False,
+    is_eager=True,
+    callback=_version,
+    help="Print the version and the set of physical constants.",
+)
+def commands() -> None:
+    """Turn reviewed records of conducting materials into a reference handbook."""
+
+
+@commands.command("press", cls=Command, examples=["sheetgen press materials --into site"])
+@materials
+@click.option(
+    "--into",
+    metavar="SITE",
+    type=click.Path(path_type=Path),
+    default=SITE,
+    help="The folder to publish to [default: site].",
+)
+@as_json
+@with_traceback
+def press_command(materials: Path, into: Path, as_json: bool) -> int:
+    """Derive every sheet and publish the site: the whole new one, or at any fault the old one as it stood."""
+    from sheetgen.press import FolderRefusedError, press
+
+    try:
+        with ProgressLine() as progress:
+            pressed = press(materials, into, progress)
+    except FaultsError as error:
+        return _at_fault(error.faults, as_json, f"Nothing was published; {into} stands as it stood.")
+    except FolderRefusedError as error:
+        raise WrongWordError(str(error)) from error
+    report = pressed.report
+    if as_json:
+        _print_json(
+            {
+                "site": str(into),
+                "sheets": pressed.sheets,
+                "written": list(report.written),
+                "unchanged": len(report.unchanged),
+                "removed": list(report.removed),
+                "kept": list(report.kept),
+                "overwritten": list(report.overwritten),
+                "remarks": [_fault_json(remark) for remark in pressed.remarks],
+            }
+        )
+        return DONE
+    _list(pressed.remarks)
+    _list(f"{into / path}: changed by hand since the last press; written anew" for path in report.overwritten)
+    _list(f"{into / path}: not made by a press; kept" for path in report.kept if path != ".gitignore")
+    click.echo(
+        f"{into}: {_count(pressed.sheets, 'sheet')}; {_count(len(report.written), 'file')} written, "
+        f"{len(report.unchanged)} unchanged, {len(report.removed)} removed."
+    )
+    return DONE
+
+
+@commands.command("proof", cls=Command, examples=["sheetgen proof materials"])
+@materials
+@as_json
+@with_traceback
+def proof_command(materials: Path, as_json: bool) -> int:
+    """Read and derive everything, list what is at fault and what to know, publish nothing."""
+    from sheetgen.handbook import Handbook
+
+    try:
+        with ProgressLine() as progress:
+            progress("reading records", 0, 0)
+            handbook = Handbook.load(materials)
+    except FaultsError as error:
+        return _at_fault(error.faults, as_json)
+    if as_json:
+        remarks = [_fault_json(remark) for remark in handbook.remarks]
+        _print_json({"sheets": len(handbook.sheets), "faults": [], "remarks": remarks})
+    else:
+        _list(handbook.remarks)
+        remarks = _count(len(handbook.remarks), "remark")
+        click.echo(f"{materials}: {_count(len(handbook.sheets), 'record')} in order, {remarks}.")
+    return DONE
+
+
+@commands.command(
+    "quote",
+    cls=Command,
+    examples=["sheetgen quote copper fermi_energy", "sheetgen quote Na chemical_potential --at 77"],
+)
+@click.argument("material", cls=Argument, said="its slug, name or formula, in capitals or not")
+@click.argument("quantity", cls=Argument, said="its id or title, as fermi_energy or 'Fermi energy'")
+@click.option("--at", metavar="T", type=float, help="The temperature in kelvins [default: the reference].")
+@click.option(
+    "--materials",
+    metavar="FOLDER",
+    type=click.Path(path_type=Path),
+    default=MATERIALS,
+    callback=_folder_of_records,
+    help="The folder of records [default: materials].",
+)
+@as_json
+@with_traceback
+def quote_command(material: str, quantity: str, at: float | None, materials: Path, as_json: bool) -> int:
+    """Print one number with its uncertainty, what it comes from, what it assumes, and its standing."""
+    from sheetgen.handbook import Handbook
+    from sheetgen.quote import NotDerivedError, NotFoundError, quote
+
+    try:
+        quoted = quote(Handbook.load(materials), material, quantity, at)
+    except FaultsError as error:
+        return _at_fault(error.faults, as_json)
+    except NotFoundError as error:
+        raise WrongWordError(str(error)) from error
+    except NotDerivedError as error:
+        return _failed(str(error), RECORDS)
+    if as_json:
+        _print_json(quoted.as_json())
+    else:
+        _list(quoted.lines(), err=False)
+    return DONE
+
+
+def _at_fault(faults: Sequence[Fault], as_json: bool, closing: str = "") -> int:
+    """Every fault on stderr, sorted by place; with --json the same once more on stdout, for a program."""
+    _list(faults)
+    click.echo(f"{_count(len(faults), 'fault')}. {closing}".rstrip(), err=True)
+    if as_json:
+        _print_json({"faults": [_fault_json(fault) for fault in faults]})
+    return RECORDS
+
+
+def _fault_json(fault: Fault) -> dict[str, Any]:
+    place = fault.place
+    return {"file": place.file, "line": place.line, "column": place.column, "message": fault.message}
+
+
+def _list(lines: Iterable[object], err: bool = True) -> None:
+    for line in lines:
+        click.echo(str(line), err=err)
+
+
+def _print_json(content: dict[str, Any]) -> None:
+    click.echo(json.dumps(content, indent=1, ensure_ascii=False))
+
+
+def _count(number: int, word: str) -> str:
+    return f"{number} {word}{'' if number == 1 else 's'}"

@@ -1,0 +1,87 @@
+"""The list of what a press made, and from what: it tells our files from those that a person put there."""
+
+from __future__ import annotations
+
+import hashlib
+import json
+import os
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass, field
+from pathlib import Path
+
+from sheetgen import __version__
+
+NAME = "manifest.json"
+INPUT_SUFFIXES = {".bib", ".cif", ".py", ".yaml", ".yml"}
+
+
+class FolderRefusedError(Exception):
+    """The folder holds something that a press must not replace: one line that says what to do."""
+
+
+@dataclass(frozen=True)
+class Manifest:
+    """SHA-256, in hexadecimal, of each published file and of each file that it was made from."""
+
+    files: Mapping[str, str] = field(default_factory=dict)
+    inputs: Mapping[str, str] = field(default_factory=dict)
+
+    def to_bytes(self) -> bytes:
+        """The published form; equal manifests give equal bytes."""
+        content = {
+            "program": "sheetgen",
+            "version": __version__,
+            "files": dict(sorted(self.files.items())),
+            "inputs": dict(sorted(self.inputs.items())),
+        }
+        return (json.dumps(content, indent=1, ensure_ascii=False) + "\n").encode()
+
+
+def digest(data: bytes) -> str:
+    """SHA-256 of the data in hexadecimal."""
+    return hashlib.sha256(data).hexdigest()
+
+
+def fingerprints(folder: Path) -> dict[str, str]:
+    """SHA-256 of every file of the folder that a handbook may be made from, by name."""
+    return {
+        path.name: digest(path.read_bytes())
+        for path in sorted(folder.iterdir())
+        if path.suffix in INPUT_SUFFIXES and not path.name.startswith(".") and path.is_file()
+    }
+
+
+def standing_manifest(site: Path) -> Manifest:
+    """What the last press published in this folder; empty for a folder that a first press may fill.
+
+    Raises FolderRefusedError for a folder that holds files and no manifest of ours.
+    """
+    path = site / NAME
+    if not path.is_file():
+        if set(paths_in(site)) <= {".gitignore"}:
+            return Manifest()
+        raise FolderRefusedError(
+            f"{site} holds files and no {NAME} of an earlier press, so it may be someone's work. "
+            "Choose an empty or a new folder with --into."
+        )
+    try:
+        content = json.loads(path.read_bytes())
+        if content["program"] == "sheetgen":
+            return Manifest(dict(content["files"]), dict(content["inputs"]))
+    except (ValueError, KeyError, TypeError):
+        pass  # told below, as for a manifest of some other program
+    raise FolderRefusedError(
+        f"{path} is not the manifest of a press, so {site} may be someone's work. "
+        "Move the folder away, or choose another with --into."
+    )
+
+
+def paths_in(folder: Path) -> Iterator[str]:
+    """Every file below the folder, relative to it and with slashes; a symbolic link counts as a file."""
+    if not folder.is_dir():
+        return
+    for entry in sorted(os.scandir(folder), key=lambda found: found.name):
+        if entry.is_dir(follow_symlinks=False):
+            yield from (f"{entry.name}/{path}" for path in paths_in(Path(entry.path)))
+        else:
+            yield entry.name

@@ -1,0 +1,72 @@
+"""The whole road from a folder of records to a published site."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Iterator
+from dataclasses import dataclass
+from itertools import chain
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from sheetgen.faults import Fault
+from sheetgen.press.disk import Disk
+from sheetgen.press.manifest import fingerprints
+from sheetgen.press.publishing import Report, publish
+
+if TYPE_CHECKING:
+    from sheetgen.figures import Figure
+    from sheetgen.handbook import Handbook
+
+Progress = Callable[[str, int, int], None]
+
+
+@dataclass(frozen=True)
+class Pressed:
+    """What a press came to: the number of sheets, what a person should know, and what changed in the site."""
+
+    sheets: int
+    remarks: tuple[Fault, ...]
+    report: Report
+
+
+def press(
+    folder: Path, into: Path, progress: Progress = lambda step, done, total: None, disk: Disk | None = None
+) -> Pressed:
+    """Derive the handbook of the folder and publish it; a site that needs no change is left untouched.
+
+    `progress` is called with the name of a step, how much of it is done and how much there is (0: not known).
+    Raises FaultsError, FolderRefusedError or MachineError; the site that stood before then still stands.
+    """
+    from sheetgen.documents import documents
+    from sheetgen.handbook import Handbook
+    from sheetgen.pages import lay_out
+
+    inputs = fingerprints(folder)
+    progress("reading records", 0, 0)
+    handbook = Handbook.load(folder)
+    figures = _figures(handbook, progress)
+    files = chain(documents(handbook, figures), lay_out(handbook, figures))
+    report = publish(
+        _counted(files, progress),
+        into,
+        inputs,
+        disk=disk,
+        waiting=lambda: progress("waiting for another press of this site", 0, 0),
+    )
+    return Pressed(len(handbook.sheets), tuple(handbook.remarks), report)
+
+
+def _figures(handbook: Handbook, progress: Progress) -> dict[str, list[Figure]]:
+    from sheetgen.figures import draw_all
+
+    figures = {}
+    for done, sheet in enumerate(handbook.sheets, 1):
+        figures[sheet.record.slug] = draw_all(sheet, handbook)
+        progress("drawing figures", done, len(handbook.sheets))
+    return figures
+
+
+def _counted(files: Iterable[tuple[str, bytes]], progress: Progress) -> Iterator[tuple[str, bytes]]:
+    for done, file in enumerate(files, 1):
+        progress("laying out pages", done, 0)
+        yield file
