@@ -42,14 +42,14 @@ def publish(
 
     Raises FolderRefusedError for a folder that is not ours to replace, MachineError for a failing machine.
     """
-    site = _place_of(Path(into))
     disk = disk or Disk()
-    disk.make_folder(site.parent)
-    with alone(site.with_name(f".{site.name}.lock"), waiting):
-        try:
+    try:
+        site = _place_of(Path(into))
+        disk.make_folder(site.parent)
+        with alone(site.with_name(f".{site.name}.lock"), waiting):
             return _Publication(site, disk).run(files, inputs or {})
-        except OSError as refusal:
-            raise MachineError(explain(refusal, Path(refusal.filename or site))) from refusal
+    except OSError as refusal:
+        raise MachineError(explain(refusal, Path(refusal.filename or into))) from refusal
 
 
 def _place_of(into: Path) -> Path:
