@@ -1,0 +1,209 @@
+"""Structures from a CIF beside the record: cell with uncertainties, symmetry and sites, by the crystallographic library."""
+
+from __future__ import annotations
+
+import re
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from sheetgen.faults import Place
+from sheetgen.records.cells import snapped
+from sheetgen.records.elements import elements
+from sheetgen.records.files import read_text
+from sheetgen.records.lattices import SHAPES, CellShape
+from sheetgen.records.measures import STRUCTURE
+from sheetgen.records.model import Crystal, Site, Value
+from sheetgen.records.notation import read_number
+from sheetgen.records.structure import ANGLES, build_crystal, sound
+from sheetgen.records.symmetry import cell_shape, expanded, find_space_group, group_lattice_name
+from sheetgen.records.trees import Scalar
+from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.values import Origin, Reader
+
+if TYPE_CHECKING:
+    import gemmi
+
+MAXIMUM_BYTES = 4_000_000
+MAXIMUM_OPERATIONS = 192
+MAXIMUM_ATOMS = 1000
+
+_NAME = re.compile(r"[A-Za-z0-9][A-Za-z0-9._-]{0,79}\.cif", re.IGNORECASE)
+_CONSTANTS = {
+    "a": "_cell_length_a",
+    "b": "_cell_length_b",
+    "c": "_cell_length_c",
+    "alpha": "_cell_angle_alpha",
+    "beta": "_cell_angle_beta",
+    "gamma": "_cell_angle_gamma",
+}
+_OPERATIONS = ("_space_group_symop_operation_xyz", "_space_group_symop.operation_xyz", "_symmetry_equiv_pos_as_xyz")
+_GROUPS = (
+    "_space_group_name_H-M_alt",
+    "_symmetry_space_group_name_H-M",
+    "_space_group_name_Hall",
+    "_symmetry_space_group_name_Hall",
+    "_space_group_IT_number",
+    "_symmetry_Int_Tables_number",
+)
+_TEMPERATURES = ("_cell_measurement_temperature", "_diffrn_ambient_temperature")
+_SYMBOL = re.compile(r"[A-Za-z]{1,2}")
+
+
+def read_cif(node: Scalar, reader: Reader, folder: Path) -> Crystal | None:
+    """The crystal of a CIF, or None with a fault logged."""
+    name = node.text.strip()
+    if not _NAME.fullmatch(name):
+        reader.fault(node, f"cif: '{name[:60]}' is no name of a CIF; expected a file beside the record, such as copper.cif.")
+        return None
+    path = folder / name
+    if not path.exists() and not path.is_symlink():
+        reader.fault(node, f"cif: there is no file '{name}' beside the record; put it there, or correct the name.")
+        return None
+    text = read_text(path, folder, reader.log, MAXIMUM_BYTES)
+    return None if text is None else _read(text, path, reader)
+
+
+def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
+    from gemmi import cif
+
+    try:
+        document = cif.read_string(text)
+    except (ValueError, RuntimeError) as error:
+        reader.fault(*_syntax(str(error), path))
+        return None
+    blocks = [block for block in document if block.find_value("_cell_length_a")]
+    if len(blocks) != 1:
+        found = "no block" if not blocks else f"{len(blocks)} blocks ({', '.join(block.name for block in blocks[:5])})"
+        reader.fault(Place(str(path)), f"{found} with a cell; expected one. Keep the block of this material alone, with its cell.")
+        return None
+    try:
+        return _Block(blocks[0], path, reader).crystal()
+    except UnreadableError as error:
+        reader.fault(Place(str(path)), f"{error}.")
+        return None
+
+
+def _syntax(message: str, path: Path) -> tuple[Place, str]:
+    """Where and what the library found wrong: its messages read `name:line:column(byte): what`."""
+    where = re.search(r":(\d+):(\d+)(?:\(\d+\))?:?\s*(.*)", message, re.DOTALL)
+    place = Place(str(path), int(where[1]), int(where[2])) if where else Place(str(path))
+    what = " ".join((where[3] if where else message).split())
+    return place, f"not readable as CIF: {what}. Mend the file, or give lattice and atoms in the record."
+
+
+class _Block:
+    """One data block with a cell."""
+
+    def __init__(self, block: gemmi.cif.Block, path: Path, reader: Reader):
+        self.block, self.path, self.reader = block, path, reader
+
+    def crystal(self) -> Crystal | None:
+        shape, name, operations = self._symmetry()
+        constants = {key: self._constant(key, tag) for key, tag in _CONSTANTS.items()}
+        if None in constants.values():
+            return None
+        self._check_ties(constants, shape)
+        atoms = self._atoms()
+        free = {key: constants[key] for key in constants if key in shape.read}
+        crystal = build_crystal(name, shape, free, expanded(atoms, operations))
+        return crystal if sound(crystal, Place(str(self.path)), self.reader) else None
+
+    def _place(self, tag: str) -> Place:
+        item = self.block.find_pair_item(tag)
+        return Place(str(self.path), item.line_number if item else 0)
+
+    def _text(self, tag: str) -> str:
+        from gemmi import cif
+
+        raw = self.block.find_value(tag)
+        return "" if raw in (None, "?", ".") else cif.as_string(raw).strip()
+
+    def _constant(self, key: str, tag: str) -> Value | None:
+        written = self._text(tag)
+        if not written:
+            raise UnreadableError(f"'{tag}' has no value; a cell needs all its lengths and angles")
+        unit = "°" if key in ANGLES else " Å"
+        node = Scalar(written + unit, True, self._place(tag))
+        measure = STRUCTURE["a" if key in "abc" else key]
+        return self.reader.value(node, measure, tag, Origin(self._temperature(), note=f"from {self.path.name}"))
+
+    def _temperature(self) -> float | None:
+        for tag in _TEMPERATURES:
+            if written := self._text(tag):
+                kelvins = read_number(written).value
+                return kelvins if 0 < kelvins < 1e4 else None
+        return None
+
+    def _symmetry(self) -> tuple[CellShape, str, list[gemmi.Op]]:
+        """Cell shape, lattice name and operations: listed ones first, else those of the space group."""
+        import gemmi
+
+        listed = next((column for tag in _OPERATIONS if (column := self.block.find_values(tag))), None)
+        if listed:
+            if len(listed) > MAXIMUM_OPERATIONS:
+                raise UnreadableError(f"{len(listed)} symmetry operations; expected at most {MAXIMUM_OPERATIONS}")
+            operations = [self._operation(raw) for raw in listed]
+            group = gemmi.find_spacegroup_by_ops(gemmi.GroupOps(operations))
+        else:
+            group = self._group()
+            operations = list(group.operations())
+        if group is None:
+            return SHAPES["triclinic"], "triclinic", operations
+        return cell_shape(group), group_lattice_name(group), operations
+
+    def _operation(self, raw: str) -> gemmi.Op:
+        import gemmi
+        from gemmi import cif
+
+        text = cif.as_string(raw)
+        try:
+            return gemmi.Op(text)
+        except (RuntimeError, ValueError):
+            raise UnreadableError(f"'{text[:60]}' is no symmetry operation; expected such as '-x, y+1/2, -z'") from None
+
+    def _group(self) -> gemmi.SpaceGroup:
+        for tag in _GROUPS:
+            if written := self._text(tag):
+                return find_space_group(written)
+        raise UnreadableError("no symmetry is stated; expected a space group or its operations. Add the one or the other")
+
+    def _check_ties(self, constants: dict[str, Value], shape: CellShape) -> None:
+        """A fault where the cell contradicts its own symmetry."""
+        for key, fixed in zip(ANGLES, shape.angles, strict=True):
+            if fixed is not None and abs(constants[key].value - fixed) > 0.01:
+                raise UnreadableError(f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry fixes {fixed:g}°; correct one of them")
+        for key in ("b", "c"):
+            tied = key not in shape.read
+            if tied and abs(constants[key].si / constants["a"].si - 1) > 1e-4:
+                raise UnreadableError(f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry makes it equal to a; correct one of them")
+
+    def _atoms(self) -> list[Site]:
+        tags = ["label", "?type_symbol", "fract_x", "fract_y", "fract_z", "?occupancy"]
+        table = self.block.find("_atom_site_", tags)
+        if not 0 < len(table) <= MAXIMUM_ATOMS:
+            raise UnreadableError(f"{len(table)} atom sites with fractional coordinates; expected 1 to {MAXIMUM_ATOMS}. Add the loop of _atom_site_fract_x, y and z")
+        return [self._atom(row) for row in table]
+
+    def _atom(self, row: gemmi.cif.Table.Row) -> Site:
+        label = row.str(0)
+        symbol = row.str(1) if row.has(1) and row.str(1) not in "?." else label
+        found = _SYMBOL.match(symbol)
+        candidates = (found[0].capitalize(), found[0][0].upper()) if found else ()
+        element = next((candidate for candidate in candidates if candidate in elements()), None)
+        if element is None:
+            raise UnreadableError(f"the atom site '{label[:40]}' names no element; expected a type symbol such as Ti")
+        position = tuple(snapped(_fraction(row.str(index), label)) for index in (2, 3, 4))
+        occupancy = _fraction(row.str(5), label) if row.has(5) and row.str(5) not in "?." else 1.0
+        if not 0 < occupancy <= 1:
+            raise UnreadableError(f"the atom site '{label[:40]}' has the occupancy {occupancy:g}; expected above 0 and at most 1")
+        return Site(element, position, occupancy)
+
+
+def _fraction(text: str, label: str) -> float:
+    try:
+        number = read_number(text)
+    except UnreadableError:
+        number = None
+    if number is None or number.rest or abs(number.value) > 10:
+        raise UnreadableError(f"the atom site '{label[:40]}' has '{text[:40]}' for a number; expected such as 0.25 or 0.2345(2)")
+    return number.value

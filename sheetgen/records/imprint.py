@@ -1,0 +1,196 @@
+"""The imprint, handbook.yaml: who publishes the handbook, at which temperatures, in which units, on what paper."""
+
+from __future__ import annotations
+
+import re
+from pathlib import Path
+
+from sheetgen.faults import Place, did_you_mean
+from sheetgen.records.model import Imprint
+from sheetgen.records.spelling import key_variants, written_key
+from sheetgen.records.trees import Listing, Node, Scalar, Table
+from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.units import read_unit
+from sheetgen.records.values import Reader, text_of
+
+FILE_NAME = "handbook.yaml"
+REFERENCE_TEMPERATURE = 293.15
+TEMPERATURES = (4.2, 77.0, 293.15)
+MAXIMUM_TEMPERATURES = 50
+PAPERS = {"a4": "A4", "letter": "letter"}
+THRESHOLDS: dict[str, float | tuple[float | None, ...]] = {"agrees": 0.10, "adjust": 2.0, "undecided": 0.25}
+
+_TEXTS = ("title", "group", "edition", "licence", "language", "contact", "base_address")
+_KEYS = (*_TEXTS, "reference_temperature", "temperatures", "paper", "units", "thresholds", "own_quantities")
+_LONGEST_TEXT = 300
+_LANGUAGE = re.compile(r"[a-z]{2,3}(?:-[A-Za-z0-9]{2,8})*")
+_ADDRESS = re.compile(r"https?://[^\s\"<>\\^`{|}]+")
+_CONTACT = re.compile(r"[^\s@\"<>()]+@[^\s@\"<>()]+\.[A-Za-z0-9-]{2,}|https?://[^\s\"<>\\^`{|}]+")
+_IDENTIFIER = re.compile(r"[a-z][a-z0-9_]{0,63}")
+
+
+def default_imprint(path: Path) -> Imprint:
+    """What holds where nothing was stated; stands in for a faulty imprint while the records are checked."""
+    return Imprint(
+        title="", group="", edition="", licence="", language="en", contact="", base_address="",
+        reference_temperature=REFERENCE_TEMPERATURE, temperatures=_ordered(TEMPERATURES, REFERENCE_TEMPERATURE),
+        paper="A4", units={}, thresholds=dict(THRESHOLDS), own_quantities=None, place=Place(str(path)),
+    )  # fmt: skip
+
+
+def read_imprint(root: Table, path: Path, reader: Reader) -> Imprint:
+    """The imprint at the root of handbook.yaml; what cannot be read is logged and left at its default."""
+    _check_keys(root, reader)
+    texts = {key: _text(root.node(key), key, reader) for key in _TEXTS}
+    if "title" not in root.entries:
+        reader.fault(root, "the imprint has no title; add 'title: Handbook of …'.")
+    _check_form(root, "language", _LANGUAGE, "a language tag such as 'en' or 'en-GB'", reader)
+    _check_form(root, "base_address", _ADDRESS, "an address such as 'https://handbook.example.org/'", reader)
+    _check_form(root, "contact", _CONTACT, "a mail address or a web address", reader)
+    reference = _temperature(root.node("reference_temperature"), "reference temperature", reader)
+    reference = REFERENCE_TEMPERATURE if reference is None else reference
+    return Imprint(
+        **{**texts, "language": texts["language"] or "en"},
+        reference_temperature=reference,
+        temperatures=_ordered(_temperatures(root.node("temperatures"), reader), reference),
+        paper=_paper(root.node("paper"), reader),
+        units=_units(root.node("units"), reader),
+        thresholds=THRESHOLDS | _thresholds(root.node("thresholds"), reader),
+        own_quantities=_own_quantities(root.node("own_quantities"), path.parent, reader),
+        place=root.place,
+    )
+
+
+def _check_keys(root: Table, reader: Reader) -> None:
+    for key, entry in root.entries.items():
+        if key not in _KEYS:
+            names = list(map(written_key, _KEYS))
+            guess = did_you_mean(key.replace("_", " "), names)
+            reader.fault(entry.key.place, f"unknown key '{entry.key.text[:60]}'; expected one of {', '.join(names)}.{guess}")
+
+
+def _text(node: Node | None, key: str, reader: Reader) -> str:
+    if node is None:
+        return ""
+    if not isinstance(node, Scalar) or not node.text.strip() or len(node.text) > _LONGEST_TEXT:
+        reader.fault(node, f"{written_key(key)}: expected a text of 1 to {_LONGEST_TEXT} characters; write one, or leave the key out.")
+        return ""
+    return node.text.strip()
+
+
+def _check_form(root: Table, key: str, form: re.Pattern[str], expected: str, reader: Reader) -> None:
+    text = text_of(root.node(key))
+    if text and not form.fullmatch(text):
+        reader.fault(root.node(key), f"{written_key(key)}: found '{text}'; expected {expected}.")
+
+
+def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
+    """A temperature above absolute zero in K; a bare number counts kelvins."""
+    if node is None:
+        return None
+    if not isinstance(node, Scalar):
+        reader.fault(node, f"{name}: expected a temperature such as '293.15 K' or '20 °C'.")
+        return None
+    if re.fullmatch(r"\s*[+-]?[\d.]+\s*", node.text):
+        node = Scalar(f"{node.text.strip()} K", node.plain, node.place)
+    kelvins = reader.temperature(node, name)
+    if kelvins is not None and kelvins <= 0:
+        reader.fault(node, f"{name}: '{node.text}' is absolute zero; expected a temperature above it.")
+        return None
+    return kelvins
+
+
+def _temperatures(node: Node | None, reader: Reader) -> tuple[float, ...]:
+    if node is None:
+        return TEMPERATURES
+    if not isinstance(node, Listing) or not 0 < len(node.items) <= MAXIMUM_TEMPERATURES:
+        reader.fault(node, f"temperatures: expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C].")
+        return TEMPERATURES
+    found = [_temperature(item, "temperatures", reader) for item in node.items]
+    return tuple(kelvins for kelvins in found if kelvins is not None)
+
+
+def _ordered(temperatures: tuple[float, ...], reference: float) -> tuple[float, ...]:
+    """The reference temperature first, then the others in ascending order, each once."""
+    return (reference, *sorted(set(temperatures) - {reference}))
+
+
+def _paper(node: Node | None, reader: Reader) -> str:
+    if node is None:
+        return "A4"
+    if (paper := PAPERS.get(text_of(node).lower())) is None:
+        reader.fault(node, f"paper: found '{text_of(node)}'; expected A4 or letter.")
+        return "A4"
+    return paper
+
+
+def _table(node: Node | None, name: str, example: str, reader: Reader) -> Table:
+    if node is not None and not isinstance(node, Table):
+        reader.fault(node, f"{name}: expected a mapping such as {example}.")
+        node = None
+    return node or Table({}, Place(""))
+
+
+def _units(node: Node | None, reader: Reader) -> dict[str, str]:
+    units = {}
+    for key, entry in _table(node, "units", "{fermi_energy: eV}", reader).entries.items():
+        text = text_of(entry.node)
+        try:
+            if not text:
+                raise UnreadableError("no unit stands here; expected such as 'eV'")
+            read_unit(text)
+        except UnreadableError as error:
+            reader.fault(entry.node, f"units: {error}.")
+            continue
+        units[key] = text
+    return units
+
+
+def _thresholds(node: Node | None, reader: Reader) -> dict[str, float | tuple[float | None, ...]]:
+    thresholds = {}
+    for key, entry in _table(node, "thresholds", "{agrees: 0.1}", reader).entries.items():
+        if key in THRESHOLDS:
+            thresholds[key] = _threshold(entry.node, key, reader)
+        elif not _IDENTIFIER.fullmatch(key):
+            reader.fault(entry.key.place, f"'{entry.key.text[:60]}' is no id of an assumption; expected such as degenerate_gas.")
+        elif not isinstance(entry.node, Listing) or len(entry.node.items) != 2:
+            reader.fault(entry.node, f"the bounds of {key} are two: expected [strained, broken] such as [0.1, 0.3], with null for one that does not exist.")
+        else:
+            thresholds[key] = tuple(_bound(item, key, reader) for item in entry.node.items)
+    return {key: value for key, value in thresholds.items() if value is not None}
+
+
+def _threshold(node: Node, key: str, reader: Reader) -> float | None:
+    number = _number(node)
+    low, high = {"agrees": (0, 1), "adjust": (1, 1000), "undecided": (0, 10)}[key]
+    if number is None or not low < number <= high:
+        reader.fault(node, f"{key}: found '{text_of(node)}'; expected a number above {low} and at most {high}.")
+        return None
+    return number
+
+
+def _bound(node: Node, key: str, reader: Reader) -> float | None:
+    if text_of(node) in ("", "~", "null"):
+        return None
+    if (number := _number(node)) is None or number <= 0:
+        reader.fault(node, f"{key}: found '{text_of(node)}'; expected a number above 0, or null.")
+        return None
+    return number
+
+
+def _number(node: Node) -> float | None:
+    try:
+        return float(text_of(node)) if re.fullmatch(r"[\d.eE+-]{1,20}", text_of(node)) else None
+    except ValueError:
+        return None
+
+
+def _own_quantities(node: Node | None, folder: Path, reader: Reader) -> Path | None:
+    """The file of own quantities, named but not loaded: a Python file beside the imprint."""
+    if node is None:
+        return None
+    name = text_of(node)
+    if not re.fullmatch(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py", name) or not (folder / name).is_file() or (folder / name).is_symlink():
+        reader.fault(node, f"own quantities: '{name[:60]}' is no Python file beside handbook.yaml; expected a name such as quantities.py.")
+        return None
+    return folder / name

@@ -1,0 +1,95 @@
+"""The named lattices: crystal system, centring, and the basis that a name implies."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from fractions import Fraction as F
+
+Point = tuple[F, F, F]
+
+
+def _points(*texts: str) -> tuple[Point, ...]:
+    return tuple(tuple(F(number) for number in text.split()) for text in texts)
+
+
+CENTRINGS: dict[str, tuple[Point, ...]] = {
+    "P": _points("0 0 0"),
+    "A": _points("0 0 0", "0 1/2 1/2"),
+    "B": _points("0 0 0", "1/2 0 1/2"),
+    "C": _points("0 0 0", "1/2 1/2 0"),
+    "I": _points("0 0 0", "1/2 1/2 1/2"),
+    "F": _points("0 0 0", "0 1/2 1/2", "1/2 0 1/2", "1/2 1/2 0"),
+    "R": _points("0 0 0", "2/3 1/3 1/3", "1/3 2/3 2/3"),
+}
+ORIGIN = _points("0 0 0")
+
+
+@dataclass(frozen=True, slots=True)
+class Lattice:
+    """A named lattice; `basis` holds one tuple of positions for each element, in the order of the formula."""
+
+    system: str
+    centring: str
+    basis: tuple[tuple[Point, ...], ...] = (ORIGIN,)
+
+
+LATTICES: dict[str, Lattice] = {
+    "sc": Lattice("cubic", "P"),
+    "bcc": Lattice("cubic", "I"),
+    "fcc": Lattice("cubic", "F"),
+    "hcp": Lattice("hexagonal", "P", (_points("1/3 2/3 1/4", "2/3 1/3 3/4"),)),
+    "diamond": Lattice("cubic", "F", (_points("0 0 0", "1/4 1/4 1/4"),)),
+    "zincblende": Lattice("cubic", "F", (ORIGIN, _points("1/4 1/4 1/4"))),
+    "rocksalt": Lattice("cubic", "F", (ORIGIN, _points("1/2 1/2 1/2"))),
+    "cscl": Lattice("cubic", "P", (ORIGIN, _points("1/2 1/2 1/2"))),
+    "bct": Lattice("tetragonal", "I"),
+    "tetragonal": Lattice("tetragonal", "P"),
+    "hexagonal": Lattice("hexagonal", "P"),
+    "rhombohedral": Lattice("rhombohedral", "P"),
+    "orthorhombic": Lattice("orthorhombic", "P"),
+    "base-centred-orthorhombic": Lattice("orthorhombic", "C"),
+    "body-centred-orthorhombic": Lattice("orthorhombic", "I"),
+    "face-centred-orthorhombic": Lattice("orthorhombic", "F"),
+    "monoclinic": Lattice("monoclinic", "P"),
+    "base-centred-monoclinic": Lattice("monoclinic", "C"),
+    "triclinic": Lattice("triclinic", "P"),
+}
+
+
+@dataclass(frozen=True, slots=True)
+class CellShape:
+    """Which constants of a cell are free, which are needed, and the angles (degrees) that the system fixes.
+
+    `either` lists groups of constants of which one and only one is given.
+    """
+
+    needed: tuple[str, ...]
+    either: tuple[tuple[str, ...], ...] = ()
+    angles: tuple[float | None, float | None, float | None] = (90.0, 90.0, 90.0)
+
+    @property
+    def read(self) -> tuple[str, ...]:
+        """Every constant that may be given."""
+        return (*self.needed, *(key for group in self.either for key in group))
+
+
+SHAPES: dict[str, CellShape] = {
+    "cubic": CellShape(("a",)),
+    "tetragonal": CellShape(("a",), (("c", "c_over_a"),)),
+    "hexagonal": CellShape(("a",), (("c", "c_over_a"),), (90.0, 90.0, 120.0)),
+    "orthorhombic": CellShape(("a", "b"), (("c", "c_over_a"),)),
+    "rhombohedral": CellShape(("a", "alpha"), (), (None, None, None)),
+    "monoclinic": CellShape(("a", "b", "beta"), (("c", "c_over_a"),), (90.0, None, 90.0)),
+    "triclinic": CellShape(("a", "b", "alpha", "beta", "gamma"), (("c", "c_over_a"),), (None, None, None)),
+}
+IDEAL_RATIO = (8 / 3) ** 0.5
+
+
+def lattice_name(system: str, centring: str) -> str:
+    """The contract's name for a Bravais lattice found by its space group."""
+    named = {("cubic", "P"): "sc", ("cubic", "I"): "bcc", ("cubic", "F"): "fcc", ("tetragonal", "I"): "bct"}
+    if name := named.get((system, centring)):
+        return name
+    if centring in "P" or system in ("rhombohedral", "hexagonal"):
+        return "rhombohedral" if centring == "R" else system
+    return {"I": "body-centred-", "F": "face-centred-"}.get(centring, "base-centred-") + system

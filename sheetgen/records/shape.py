@@ -1,0 +1,107 @@
+"""The shape of a record held against the schema: each error of the schema library as a fault with its place."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Iterator
+from itertools import islice
+from typing import TYPE_CHECKING
+
+from sheetgen.faults import FaultLog, Place, did_you_mean
+from sheetgen.records.schema import canonical_schema, validator
+from sheetgen.records.spelling import written_key
+from sheetgen.records.structure import canonical_lattice
+from sheetgen.records.trees import Listing, Node, Scalar, Table, plain_data
+
+if TYPE_CHECKING:
+    from jsonschema.exceptions import ValidationError
+
+MAXIMUM_FAULTS = 50
+
+
+def has_record_shape(root: Table, log: FaultLog) -> bool:
+    """Whether a tree has the shape of a record; where it has not, every fault of it is logged."""
+    data = plain_data(root)
+    structure = data.get("structure")
+    if isinstance(structure, dict) and isinstance(structure.get("lattice"), str):
+        structure["lattice"] = canonical_lattice(structure["lattice"])
+    errors = islice(validator().iter_errors(data), MAXIMUM_FAULTS)
+    faults = dict.fromkeys(fault for error in errors for fault in _faults(error, root))
+    for place, message in faults:
+        log.fault(place, message)
+    return not faults
+
+
+def _faults(error: ValidationError, root: Table) -> Iterator[tuple[Place, str]]:
+    node = _node_at(root, error.absolute_path)
+    name = _name(error.absolute_path)
+    expected = error.schema["description"]
+    if error.validator == "additionalProperties":
+        yield from _unknown_keys(node, error.schema, name)
+    elif error.validator == "required":
+        for key in error.validator_value:
+            if key not in node.entries:
+                yield node.place, f"{name} has no '{written_key(key)}'; expected {expected}. Add it."
+    elif error.validator == "enum":
+        options = [str(option) for option in error.validator_value]
+        guess = did_you_mean(node.text, options) if isinstance(node, Scalar) else ""
+        yield node.place, f"{name}: found {_found(node)}; expected {_one_of(options)}.{guess}"
+    else:
+        yield node.place, f"{name}: found {_found(node)}; expected {expected}{_limit(error)}."
+
+
+def _node_at(root: Node, path: Iterable[str | int]) -> Node:
+    node = root
+    for step in path:
+        node = node.items[step] if isinstance(node, Listing) else node.entries[step].node
+    return node
+
+
+def _name(path: Iterable[str | int]) -> str:
+    """What a message calls the thing at a path: its last key, `value` aside."""
+    keys = [step for step in path if isinstance(step, str) and step != "value"]
+    return written_key(keys[-1]) if keys else "the record"
+
+
+def _found(node: Node) -> str:
+    if isinstance(node, Table):
+        return "a mapping"
+    if isinstance(node, Listing):
+        return f"a list of {len(node.items)}"
+    if not node.text:
+        return "nothing"
+    return f"'{node.text}'" if len(node.text) <= 60 else f"a text of {len(node.text)} characters"
+
+
+def _limit(error: ValidationError) -> str:
+    limits = {"maxLength": "of at most {} characters", "maxItems": "of at most {}", "minItems": "of at least {}"}
+    return f", {limits[error.validator].format(error.validator_value)}" if error.validator in limits else ""
+
+
+def _one_of(options: list[str]) -> str:
+    return f"one of {', '.join(options)}" if len(options) > 2 else " or ".join(options)
+
+
+def _unknown_keys(table: Table, schema: dict, name: str) -> Iterator[tuple[Place, str]]:
+    known = schema["properties"]
+    patterns = [re.compile(pattern) for pattern in schema.get("patternProperties", ())]
+    for key, entry in table.entries.items():
+        if key in known or any(pattern.search(key) for pattern in patterns):
+            continue
+        expected = ", ".join(map(written_key, known))
+        written = entry.key.text if len(entry.key.text) <= 60 else entry.key.text[:57] + "…"
+        where = "" if name == "the record" else f" of {name}"
+        mend = _elsewhere(key, known) or did_you_mean(key.replace("_", " "), map(written_key, known))
+        yield entry.key.place, f"unknown key '{written}'{where}; expected one of {expected}.{mend}"
+
+
+def _elsewhere(key: str, known: dict) -> str:
+    """Where a key belongs that is known in another section."""
+    sections = canonical_schema()["properties"]
+    if key in sections and "name" not in known:
+        return f" '{written_key(key)}' belongs at the left margin, outside every section."
+    for section, schema in sections.items():
+        properties = schema.get("items", schema).get("properties", {})
+        if key in properties and properties is not known and section != "cautions":
+            return f" Put '{written_key(key)}' under '{written_key(section)}'."
+    return ""

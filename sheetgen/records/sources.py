@@ -1,0 +1,104 @@
+"""The bibliography, sources.bib: BibTeX read by a library, with the line of every entry and plain Unicode texts."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator
+from pathlib import Path
+from typing import NamedTuple
+
+from sheetgen.faults import FaultLog, Place
+from sheetgen.records.files import place_of
+from sheetgen.records.model import Source
+from sheetgen.records.references import link_of, person_name, plain_text, reference
+from sheetgen.records.unreadable import UnreadableError
+
+MAXIMUM_BYTES = 4_000_000
+MAXIMUM_FIELD = 20_000
+
+_PEOPLE = ("author", "editor")
+_NO_SOURCES = ("string", "preamble")
+
+
+class _Entry(NamedTuple):
+    """An entry as the library read it, with where it begins and the text that was typed."""
+
+    kind: str
+    key: str
+    fields: list[tuple[str, str]]
+    place: Place
+    bibtex: str
+
+
+def read_sources(text: str, path: Path, log: FaultLog) -> dict[str, Source]:
+    """Every source by its key, in the order of the file; everything wrong is logged."""
+    sources: dict[str, Source] = {}
+    for entry in _entries(text, str(path), log):
+        if entry.key in sources:
+            first = sources[entry.key].place.line
+            log.fault(entry.place, f"the source '{entry.key}' stands a second time (first in line {first}); keep one of them.")
+            continue
+        try:
+            sources[entry.key] = _source(entry)
+        except UnreadableError as error:
+            log.fault(entry.place, f"the source '{entry.key}': {error}.")
+    return sources
+
+
+def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
+    from pybtex.database.input.bibtex import LowLevelParser
+    from pybtex.scanner import PybtexSyntaxError
+
+    class BoundedParser(LowLevelParser):
+        """Refuses a value that abbreviations of abbreviations have blown up."""
+
+        def parse_value(self) -> None:
+            super().parse_value()
+            if sum(map(len, self.current_value)) > MAXIMUM_FIELD:
+                raise PybtexSyntaxError(f"a field of more than {MAXIMUM_FIELD} characters", self)
+
+    def note(error: PybtexSyntaxError) -> None:
+        what = str(error).split(": ", 1)[-1]
+        log.fault(Place(file, error.lineno), f"not readable as BibTeX: {what}. Check the braces, quotes and commas of this entry and of the one before.")
+
+    parser = BoundedParser(text, handle_error=note)
+    for kind, content in parser:
+        if kind.lower() in _NO_SOURCES:
+            continue
+        key, fields = content
+        start = parser.command_start
+        joined = [(name.lower(), " ".join("".join(parts).split())) for name, parts in fields]
+        yield _Entry(kind.lower(), key, joined, place_of(text, start, file), text[start : parser.pos])
+
+
+def _source(entry: _Entry) -> Source:
+    names = [name for name, _ in entry.fields]
+    if repeated := next((name for name in names if names.count(name) > 1), None):
+        raise UnreadableError(f"the field '{repeated}' stands twice; keep one of them")
+    written = dict(entry.fields)
+    people = {role: _people(written[role]) for role in _PEOPLE if role in written}
+    fields = {name: plain_text(value) for name, value in written.items() if name not in _PEOPLE}
+    fields |= {role: " and ".join(names) for role, names in people.items()}
+    if not {"title", "author", "editor", "note"} & fields.keys():
+        raise UnreadableError("says neither title, author nor note; add what a reader needs to find it")
+    authors = people.get("author") or people.get("editor") or ()
+    link = link_of(written)
+    return Source(
+        key=entry.key,
+        kind=entry.kind,
+        title=fields.get("title", ""),
+        authors=authors,
+        year=fields.get("year", ""),
+        fields=fields,
+        text=reference(authors, fields),
+        link=link,
+        bibtex=entry.bibtex,
+        note=fields.get("note", ""),
+        place=entry.place,
+    )
+
+
+def _people(text: str) -> tuple[str, ...]:
+    from pybtex.bibtex.utils import split_name_list
+
+    return tuple(person_name(name) for name in split_name_list(text))

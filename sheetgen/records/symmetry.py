@@ -1,0 +1,85 @@
+"""Space groups, by the crystallographic library: finding one, its operations, and what its system ties."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from sheetgen.records.cells import MAXIMUM_SITES, merged_sites, snapped
+from sheetgen.records.lattices import SHAPES, CellShape, lattice_name
+from sheetgen.records.model import Site
+from sheetgen.records.unreadable import UnreadableError
+
+if TYPE_CHECKING:
+    import gemmi
+
+
+def find_space_group(text: str, rhombohedral_axes: bool = False) -> gemmi.SpaceGroup:
+    """The space group of a Hermann–Mauguin or Hall symbol, or a number from 1 to 230.
+
+    A rhombohedral group is taken on hexagonal axes unless `rhombohedral_axes`. Raises UnreadableError.
+    """
+    import gemmi
+
+    symbol = text.strip()
+    number = symbol.removesuffix(".0")
+    if number.isdecimal() and 1 <= int(number[:4]) <= 230:
+        symbol = gemmi.find_spacegroup_by_number(int(number)).hm
+    found = gemmi.find_spacegroup_by_name(symbol, prefer="R" if rhombohedral_axes else "H")
+    if found is None and symbol.isascii():
+        found = gemmi.find_spacegroup_by_ops(gemmi.symops_from_hall(symbol)) if _hall(symbol) else None
+    if found is None:
+        raise UnreadableError(
+            f"'{text}' is no space group; expected a symbol such as 'Fm-3m' or a number from 1 to 230"
+        )
+    return found
+
+
+def _hall(symbol: str) -> bool:
+    import gemmi
+
+    try:
+        gemmi.symops_from_hall(symbol)
+    except (RuntimeError, ValueError):
+        return False
+    return True
+
+
+def cell_system(group: gemmi.SpaceGroup) -> str:
+    """The system whose cell shape the group's axes have; a trigonal group counts by its axes."""
+    system = group.crystal_system_str()
+    if system == "trigonal":
+        return "rhombohedral" if group.ext == "R" else "hexagonal"
+    return system
+
+
+def cell_shape(group: gemmi.SpaceGroup) -> CellShape:
+    """Which cell constants the group leaves free."""
+    system = cell_system(group)
+    axis = group.monoclinic_unique_axis() if system == "monoclinic" else "b"
+    if axis in "b\0":
+        return SHAPES[system]
+    angle = {"a": "alpha", "c": "gamma"}[axis]
+    free = tuple(None if name == angle else 90.0 for name in ("alpha", "beta", "gamma"))
+    return CellShape(("a", "b", angle), (("c", "c_over_a"),), free)
+
+
+def group_lattice_name(group: gemmi.SpaceGroup) -> str:
+    """The name of the group's Bravais lattice; on rhombohedral axes the cell itself is primitive."""
+    system = cell_system(group)
+    return "rhombohedral" if system == "rhombohedral" else lattice_name(system, group.centring_type())
+
+
+def expanded(atoms: Iterable[Site], operations: Iterable[gemmi.Op]) -> tuple[Site, ...]:
+    """Every site of the cell that the atoms of the asymmetric unit stand for. Raises UnreadableError if too many."""
+    operations = list(operations)
+    sites: list[Site] = []
+    for atom in atoms:
+        images = (
+            Site(atom.element, tuple(map(snapped, operation.apply_to_xyz(list(atom.position)))), atom.occupancy)
+            for operation in operations
+        )
+        sites += merged_sites(images)
+        if len(sites) > MAXIMUM_SITES:
+            raise UnreadableError(f"the cell holds more than {MAXIMUM_SITES} sites; expected a smaller cell")
+    return merged_sites(sites)

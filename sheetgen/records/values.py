@@ -1,0 +1,205 @@
+"""Values of a record: a text, a number, or a mapping with `value`, `at`, `from`, `note` and `recalled`."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+from dataclasses import dataclass, field, replace
+
+from sheetgen.faults import FaultLog, Place, did_you_mean
+from sheetgen.records.measures import ANGLE, TEMPERATURE, Measure
+from sheetgen.records.model import Source, Value
+from sheetgen.records.notation import Number, read_number
+from sheetgen.records.trees import Listing, Node, Scalar, Table
+from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.units import Unit, read_unit
+
+# Angles and temperatures of the record are near these, so that the powers of ten of a slip still print shortly.
+_SHORT = "{:.6g}"
+
+
+@dataclass(frozen=True, slots=True)
+class Origin:
+    """Where a value comes from, and at what temperature (K) it was taken."""
+
+    temperature: float | None = None
+    sources: tuple[str, ...] = ()
+    recalled: bool = False
+    note: str = ""
+
+
+@dataclass(slots=True)
+class Reader:
+    """Reads nodes into values and notes what is wrong; `sources` are the known keys of sources.bib."""
+
+    log: FaultLog
+    sources: Mapping[str, Source] = field(default_factory=dict)
+
+    def fault(self, where: Node | Place, message: str) -> None:
+        """Note a fault at a node."""
+        self.log.fault(where if isinstance(where, Place) else where.place, message)
+
+    def remark(self, where: Node | Place, message: str) -> None:
+        """Note a remark at a node."""
+        self.log.remark(where if isinstance(where, Place) else where.place, message)
+
+    def value(self, node: Node, measure: Measure, name: str, origin: Origin | None = None) -> Value | None:
+        """The value at a node, or None with a fault logged; `name` is what messages call it."""
+        origin = origin or Origin()
+        if isinstance(node, Table):
+            origin = self.origin(node, origin)
+            node = node.entries["value"].node
+        try:
+            return _value(node, measure, name, origin)
+        except UnreadableError as error:
+            self.fault(node, _sentence(f"{name}: {error}"))
+            return None
+
+    def values(self, node: Node, measure: Measure, name: str) -> list[Value]:
+        """The readable values at a node that holds one value or a list of them."""
+        items = node.items if isinstance(node, Listing) else [node]
+        return [value for item in items if (value := self.value(item, measure, name))]
+
+    def origin(self, table: Table, inherited: Origin) -> Origin:
+        """What a mapping says about where its values come from, over what it inherits."""
+        origin = inherited
+        if (at := table.node("at")) is not None:
+            origin = replace(origin, temperature=self.temperature(at, "at"))
+        if (sources := table.node("from")) is not None:
+            origin = replace(origin, sources=self.source_keys(sources))
+        if (recalled := table.node("recalled")) is not None:
+            origin = replace(origin, recalled=truth(recalled))
+        if (note := table.node("note")) is not None:
+            origin = replace(origin, note=note.text.strip())
+        return origin
+
+    def temperature(self, node: Scalar, name: str) -> float | None:
+        """A temperature in K, or None with a fault logged."""
+        value = self.value(node, TEMPERATURE, name)
+        return value.si if value else None
+
+    def source_keys(self, node: Scalar | Listing) -> tuple[str, ...]:
+        """The cited keys, each checked against sources.bib."""
+        keys = node.items if isinstance(node, Listing) else [node]
+        for key in keys:
+            if key.text.strip() not in self.sources:
+                self.fault(key, _unknown_source(key.text.strip(), self.sources))
+        return tuple(dict.fromkeys(key.text.strip() for key in keys))
+
+
+def truth(node: Node | None) -> bool:
+    """Whether a node, checked before to hold a truth value, says true."""
+    return isinstance(node, Scalar) and node.text.lower() == "true"
+
+
+def text_of(node: Node | None) -> str:
+    """The text of a scalar without surrounding blanks, or the empty text where nothing stands."""
+    return node.text.strip() if isinstance(node, Scalar) else ""
+
+
+def _value(node: Scalar, measure: Measure, name: str, origin: Origin) -> Value:
+    number = read_number(node.text)
+    unit_text, unit = _unit_of(number, measure, name, node.text)
+    si = number.value * unit.factor + unit.offset
+    if not math.isfinite(si):
+        raise UnreadableError(f"'{node.text}' is beyond what a number can hold; check the exponent")
+    _check_range(si, unit_text, unit, measure, node.text)
+    spread = number.standard_uncertainty
+    return Value(
+        value=number.value,
+        standard_uncertainty=spread,
+        unit=unit_text,
+        si=si,
+        si_uncertainty=None if spread is None else spread * unit.factor,
+        temperature=origin.temperature,
+        sources=origin.sources,
+        recalled=origin.recalled,
+        note=origin.note,
+        text=node.text,
+        place=node.place,
+    )
+
+
+def _unit_of(number: Number, measure: Measure, name: str, text: str) -> tuple[str, Unit]:
+    """The unit as written and what it means; a bare number is a pure number, and for an angle counts degrees."""
+    expected = f"expected {measure.kind} such as '{measure.example}'"
+    if not number.rest:
+        if measure is ANGLE:
+            return "deg", read_unit("deg")
+        if not measure.dimensionless:
+            raise UnreadableError(f"'{text}' has no unit; {expected}. Add the unit")
+        return "1", read_unit("1")
+    unit = read_unit(number.rest)
+    wanted = read_unit(measure.unit)
+    if unit.dimension != wanted.dimension or unit.angle != wanted.angle:
+        raise UnreadableError(f"given in '{_unit_as_written(text, number)}'; {expected}.{_mend(number.rest, unit, wanted)}")
+    return _unit_as_written(text, number), unit
+
+
+def _unit_as_written(text: str, number: Number) -> str:
+    """The unit in the characters of the record where they can be found there, else in ASCII."""
+    for start in range(len(text)):
+        tail = text[start:].strip()
+        if tail and _ascii(tail) == number.rest:
+            return tail
+    return number.rest
+
+
+def _ascii(text: str) -> str:
+    from sheetgen.records.notation import ascii_form
+
+    return ascii_form(text)
+
+
+_LACKING = {"m": "length", "m^2": "area", "m^3": "volume", "K": "temperature", "K^2": "squared temperature",
+            "mol": "amount of substance", "mol K": "amount and temperature", "s": "time"}  # fmt: skip
+
+
+def _mend(written: str, unit: Unit, wanted: Unit) -> str:
+    """A closing sentence for a wrong dimension: which factor is too few or too many."""
+    if "/" in written and "(" not in written and " " in written:
+        before, after = written.split("/", 1)
+        try:
+            if read_unit(f"{before}/({after})").dimension == wanted.dimension:
+                return f" Put everything below the slash in brackets: '{before}/({after})'"
+        except UnreadableError:
+            pass
+    for factor, word in _LACKING.items():
+        for sign, advice in ((1, f" Add the {word}"), (-1, f" Divide by the {word}")):
+            if _product(unit, read_unit(factor), sign) == dict(wanted.dimension):
+                return advice
+    return " Give a unit of that kind"
+
+
+def _product(unit: Unit, factor: Unit, sign: int) -> dict[str, float]:
+    powers = dict(unit.dimension)
+    for base, power in factor.dimension:
+        powers[base] = powers.get(base, 0) + sign * power
+    return {base: power for base, power in powers.items() if power}
+
+
+def _check_range(si: float, unit_text: str, unit: Unit, measure: Measure, text: str) -> None:
+    # A bound itself may come out a rounding error beside the bound.
+    slack = 1e-12 * abs(si)
+    if measure.low - slack <= si <= measure.high + slack and not (measure.high_excluded and si >= measure.high):
+        return
+    low, high = (_bound(bound, unit_text, unit) for bound in (measure.low, measure.high))
+    below = "below" if measure.high_excluded else "to"
+    limits = f"{low} to {high}" if below == "to" else f"at least {low} and below {high}"
+    raise UnreadableError(f"'{text}' is out of the physical range of {measure.kind}; expected {limits}. Check the number and its unit")
+
+
+def _bound(si: float, unit_text: str, unit: Unit) -> str:
+    number = _SHORT.format((si - unit.offset) / unit.factor)
+    return number if unit_text == "1" else f"{number} {unit_text}"
+
+
+def _unknown_source(key: str, sources: Mapping[str, Source]) -> str:
+    return (
+        f"the source '{key}' is not in sources.bib; expected one of its keys. Add an entry '{key}' there, or correct"
+        f" the key.{did_you_mean(key, sources)}"
+    )
+
+
+def _sentence(text: str) -> str:
+    return text if text.endswith((".", "?")) else f"{text}."
