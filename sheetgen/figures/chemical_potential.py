@@ -1,0 +1,100 @@
+"""Occupation near the Fermi level, and the chemical potential against temperature: exact and by Sommerfeld's series."""
+
+from __future__ import annotations
+
+import numpy as np
+from scipy import constants as c
+
+from sheetgen.figures.density_of_states import LOOKS, occupation
+from sheetgen.figures.layout import stacked
+from sheetgen.figures.plot import Area, Axis, Curve, Figure, Note, Panel, Plot, Points, Rule, keys_of
+from sheetgen.figures.scales import snap_up
+from sheetgen.figures.stamp import stamp
+from sheetgen.figures.subject import Subject
+from sheetgen.figures.words import enumeration, kelvin, number
+
+MILLIELECTRONVOLT = c.e * 1e-3
+SERIES_HOLDS_TO = 0.3
+
+
+def draw(subject: Subject) -> Figure | None:
+    """Occupation and chemical potential of one material."""
+    return stamp(plot(subject)) if subject.has("fermi_energy", "chemical_potential") else None
+
+
+def plot(subject: Subject) -> Plot:
+    """Occupation over energies from the Fermi level; µ/E_F over T/T_F, the same curve for every gas."""
+    height, upper, lower = stacked(70, 86, (1, 2))
+    reach = snap_up(7.5 * c.k * max(subject.temperatures) / MILLIELECTRONVOLT)
+    edges, potential = _occupations(subject, reach), _potential(subject)
+    panels = (
+        Panel(
+            upper,
+            Axis("(*E* − *E*_{F}) / meV", -reach, reach),
+            Axis("*f*", 0, 1.08),
+            edges,
+            keys_of(edges),
+            4,
+        ),
+        Panel(
+            lower,
+            Axis("*T*/*T*_{F}", 0, 1.2),
+            Axis("*µ*/*E*_{F}", -0.5, 1.1),
+            potential,
+            keys_of(potential),
+            2,
+        ),
+    )
+    title = f"Occupation and chemical potential: {subject.name}"
+    return Plot("chemical-potential", subject.slug, title, _words(subject), panels, height)
+
+
+def _occupations(subject: Subject, reach: float) -> tuple:
+    level = subject.si("fermi_energy")
+    energy = np.linspace(max(-reach * MILLIELECTRONVOLT, -level), reach * MILLIELECTRONVOLT, 401)
+    layers: list = [
+        Curve(
+            kelvin(temperature),
+            energy / MILLIELECTRONVOLT,
+            occupation(level + energy, subject.si("chemical_potential", index), temperature),
+            LOOKS[index],
+        )
+        for index, temperature in list(enumerate(subject.temperatures))[: len(LOOKS)]
+    ]
+    layers.append(Rule("", x=0.0))
+    if level < reach * MILLIELECTRONVOLT:
+        layers.append(Rule("band bottom", x=-level / MILLIELECTRONVOLT, look="edge"))
+    return tuple(layers)
+
+
+def _potential(subject: Subject) -> tuple:
+    level, scale = subject.si("fermi_energy"), subject.si("fermi_temperature")
+    share = np.linspace(0.004, 1.2, 300)
+    exact = subject.curve("chemical_potential", temperature=share * scale) / level
+    layers: list = []
+    if subject.dimension == 3:
+        low = np.linspace(0.0, SERIES_HOLDS_TO, 40)
+        series = subject.curve("chemical_potential_series", temperature=low * scale) / level
+        band = np.array([0.0, SERIES_HOLDS_TO])
+        layers.append(Area("series holds", band, np.full(2, -9.0), np.full(2, 9.0), "faint", unlisted=True))
+        layers += [Curve("exact", share, exact), Curve("Sommerfeld series", low, series, "two")]
+    else:
+        layers.append(Curve("exact", share, exact))
+    temperatures = np.array(subject.temperatures)
+    stated = np.array([subject.si("chemical_potential", index) for index in range(len(temperatures))])
+    layers += [
+        Rule("", y=0.0, look="axis"),
+        Points("tabulated", temperatures / scale, stated / level, "open"),
+        Note(f"*T*_{{F}} = {number(scale)} K", 1.2, 1.1, "end", dx=-4, dy=-10),
+    ]
+    return tuple(layers)
+
+
+def _words(subject: Subject) -> str:
+    scale = subject.si("fermi_temperature")
+    listed = enumeration([kelvin(t) for t in subject.temperatures[: len(LOOKS)]])
+    return (
+        f"Occupation of the states of {subject.name} near the Fermi level at {listed}, and the chemical potential "
+        f"over the Fermi energy against temperature over the Fermi temperature of {number(scale)} kelvin"
+        + (f": exact, and by Sommerfeld's series up to {SERIES_HOLDS_TO}." if subject.dimension == 3 else ".")
+    )

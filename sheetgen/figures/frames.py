@@ -1,0 +1,44 @@
+"""Axes, ticks, labels and legends: drawn by matplotlib once per kind of figure and axis ranges, then kept.
+
+matplotlib decides where everything goes; a renderer of our own writes it as short SVG with classes instead of
+colours, and text stays text. The frame does not know any material, so that one frame serves many.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from functools import lru_cache
+
+from sheetgen.figures import style
+from sheetgen.figures.markup import spans
+from sheetgen.figures.plot import Panel, Plot
+
+
+@dataclass(frozen=True)
+class FrameSpec:
+    """What a frame depends on: its height and its panels without data."""
+
+    height: float
+    panels: tuple[Panel, ...]
+
+
+def spec_of(plot: Plot) -> FrameSpec:
+    """The part of a plot that other materials share."""
+    return FrameSpec(plot.height, tuple(replace(panel, layers=()) for panel in plot.panels))
+
+
+@lru_cache(maxsize=1024)
+def frame(spec: FrameSpec) -> str:
+    """The SVG elements of a frame; matplotlib is loaded when the first one is drawn."""
+    from sheetgen.figures.canvas import draw
+
+    return draw(spec)
+
+
+def text_element(x: float, y: float, text: str, classes: str, angle: float = 0.0) -> str:
+    """An SVG text element; x and y in points from the top left corner, classes as in the style sheet."""
+    size = {"la": style.LABEL_SIZE, "no": style.NOTE_SIZE}.get(classes.split()[0] if classes else "", style.TICK_SIZE)
+    x, y = round(x * style.UNITS_PER_POINT), round(y * style.UNITS_PER_POINT)
+    where = f'transform="translate({x},{y})rotate({-angle:g})"' if angle else f'x="{x}" y="{y}"'
+    named = f' class="{classes}"' if classes else ""
+    return f"<text {where}{named}>{spans(text, size * style.UNITS_PER_POINT)}</text>"

@@ -1,0 +1,74 @@
+"""From values on an axis to places on paper and back, and the ranges that axes may have."""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+
+from sheetgen.figures.plot import Axis
+
+# Few steps, so that figures of many materials share their axes.
+STEPS = (1.0, 2.0, 5.0, 10.0)
+
+
+def place(axis: Axis, values, start: float, length: float) -> np.ndarray:
+    """Distance along the paper in points; on a log axis what is not positive has no place (NaN)."""
+    values = np.asarray(values, dtype=float)
+    if axis.scale == "linear":
+        return start + (values - axis.low) * (length / (axis.high - axis.low))
+    positive = values > 0
+    values = np.log(values) if positive.all() else np.log(np.where(positive, values, np.nan))
+    low = math.log(axis.low)
+    return start + (values - low) * (length / (math.log(axis.high) - low))
+
+
+def value(axis: Axis, places: np.ndarray, start: float, length: float) -> np.ndarray:
+    """The inverse of `place`."""
+    share = (places - start) / length
+    if axis.scale == "linear":
+        return axis.low + share * (axis.high - axis.low)
+    return axis.low * np.exp(share * math.log(axis.high / axis.low))
+
+
+def snap_up(largest: float, steps: tuple[float, ...] = STEPS) -> float:
+    """The smallest of 1, 2, 5 times a power of ten (or other steps) that is not below the value."""
+    if not (largest > 0 and math.isfinite(largest)):
+        raise ValueError(f"an axis cannot end at {largest}; expected a positive finite number")
+    power = 10.0 ** math.floor(math.log10(largest))
+    return next(round(step * power, 12) for step in (*steps, 10 * steps[0]) if step * power >= largest * (1 - 1e-9))
+
+
+FINE_STEPS = (1.0, 1.5, 2.0, 3.0, 4.0, 5.0, 6.0, 8.0, 10.0)
+
+
+def decades(values, least: int = 1, every: int = 1) -> tuple[float, float]:
+    """Powers of ten around all positive finite values, at least `least` decades, ends at multiples of `every`."""
+    values = np.asarray(values, dtype=float)
+    exponents = np.log10(values[np.isfinite(values) & (values > 0)])
+    low = math.floor(exponents.min() / every + 1e-9) * every
+    high = math.ceil(exponents.max() / every - 1e-9) * every
+    while high - low < least:
+        low, high = (
+            low - every * (high - exponents.max() > exponents.min() - low),
+            high + every * (high - exponents.max() <= exponents.min() - low),
+        )
+    return 10.0**low, 10.0**high
+
+
+_SUPERSCRIPTS = str.maketrans("-0123456789", "⁻⁰¹²³⁴⁵⁶⁷⁸⁹")
+
+
+def power_label(number: float) -> str:
+    """A tick on a log axis: plain between 0.01 and 1000, else a power of ten."""
+    exponent = round(math.log10(number))
+    if -2 <= exponent <= 3:
+        return f"{number:g}"
+    mantissa = number / 10.0**exponent
+    times = "" if abs(mantissa - 1) < 1e-9 else f"{mantissa:g}·"
+    return f"{times}10{str(exponent).translate(_SUPERSCRIPTS)}"
+
+
+def number_label(number: float) -> str:
+    """A tick on a linear axis, with a true minus sign."""
+    return f"{number:.6g}".replace("-", "−") if abs(number) > 1e-12 else "0"
