@@ -22,7 +22,7 @@ proof: $(READY) ## check the records of materials/ and publish nothing
 
 test: $(READY_TO_TEST) ## check the style of the code and run every test
 	@$(BIN)/ruff check --no-cache .
-	@PYTHONDONTWRITEBYTECODE=1 $(BIN)/python -m pytest -q -p no:cacheprovider -n auto --dist worksteal
+	@PYTHONDONTWRITEBYTECODE=1 $(BIN)/python -m pytest -q -p no:cacheprovider -n auto --dist loadgroup
 
 bench: $(READY_TO_TEST) ## time the parts that have a benchmark
 	@for file in benchmarks/*.py; do echo "$$file"; $(BIN)/python "$$file" || exit 1; done

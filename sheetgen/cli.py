@@ -67,7 +67,7 @@ def _what_happened(error: Exception) -> str:
 
 def _version(context: click.Context, _option: click.Option, wanted: bool) -> None:
     if wanted and not context.resilient_parsing:
-        from sheetgen.constants import CONSTANTS
+        from sheetgen.sheet import CONSTANTS
 
         click.echo(f"sheetgen {__version__}, constants {CONSTANTS}")
         context.exit()

@@ -1,0 +1,46 @@
+"""What a browser does with a page, and which pages there are."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from contextlib import contextmanager
+from pathlib import Path
+
+# A closed port of this machine as proxy: whatever asks for something outside fails, and is recorded.
+FLAGS = [
+    "--no-sandbox",
+    "--disable-gpu",
+    "--disable-quic",
+    "--no-first-run",
+    "--disable-background-networking",
+    "--disable-component-update",
+    "--disable-sync",
+    "--proxy-server=http://127.0.0.1:9",
+    "--proxy-bypass-list=127.0.0.1",
+    "--font-render-hinting=none",
+]
+
+
+@contextmanager
+def watched_page(browser, **settings) -> Iterator[tuple]:
+    """A page and the list of what goes wrong on it: errors, failed requests, requests to outside."""
+    context = browser.new_context(**settings)
+    page, troubles = context.new_page(), []
+    page.on("console", lambda said: troubles.append(said.text) if said.type in {"error", "warning"} else None)
+    page.on("pageerror", lambda error: troubles.append(str(error)))
+    page.on("requestfailed", lambda request: troubles.append(f"failed: {request.url}"))
+    page.on("response", lambda answer: troubles.append(f"{answer.status}: {answer.url}") if answer.status >= 400 else 0)
+    page.on("request", lambda request: None if _at_home(request.url) else troubles.append(f"outside: {request.url}"))
+    try:
+        yield page, troubles
+    finally:
+        context.close()
+
+
+def _at_home(address: str) -> bool:
+    return address.startswith(("file:", "data:", "blob:", "http://127.0.0.1:"))
+
+
+def pages_of(site: Path) -> list[Path]:
+    """Every page of the site, in order."""
+    return sorted(site.rglob("*.html"))
