@@ -1,0 +1,105 @@
+"""Entries of the machine-readable sheet turned into what is printed: value, unit, standing, largest contributor."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Any
+
+from markupsafe import Markup
+
+from . import numbers, words
+
+AXES = ("temperature", "photon_energy", "edge", "specimen")
+
+
+@dataclass(frozen=True)
+class Cell:
+    """One number as it is printed, with its standing."""
+
+    value: Markup
+    standing: str
+    unit: Markup = Markup("")
+
+
+@dataclass(frozen=True)
+class Line:
+    """One quantity of a sheet: what it is called and its number."""
+
+    id: str
+    symbol: str
+    title: str
+    cell: Cell
+    origin: str
+
+
+@dataclass(frozen=True)
+class Preference:
+    """Units that the imprint prefers on the page, by quantity."""
+
+    units: dict[str, str]
+
+    def of(self, quantity: str, unit: str) -> str:
+        """The unit to print a quantity in, given the unit it is stated in."""
+        return self.units.get(quantity, unit)
+
+    def number(self, quantity: str, entry: dict[str, Any]) -> tuple[float, float | None]:
+        """Value and standard uncertainty of an entry in the preferred unit."""
+        unit = entry["unit"]
+        return numbers.converted(entry["value"], entry.get("standard_uncertainty"), unit, self.of(quantity, unit))
+
+
+def is_count(entry: dict[str, Any]) -> bool:
+    """Whether an entry is a whole number without a unit, to be shown in full."""
+    value = entry["value"]
+    return (
+        entry["unit"] == "1"
+        and "standard_uncertainty" not in entry
+        and not isinstance(value, list)
+        and value == int(value)
+    )
+
+
+def cell(quantity: str, entry: dict[str, Any], preference: Preference) -> Cell:
+    """The printed form of one entry; a list of numbers or of shells is written out."""
+    value, unit = entry["value"], entry["unit"]
+    if isinstance(value, list):
+        return Cell(_written_out(value, unit), entry["standing"])
+    number = numbers.printed(*preference.number(quantity, entry), whole=is_count(entry))
+    return Cell(number.html, entry["standing"], numbers.unit(preference.of(quantity, unit)))
+
+
+def _written_out(values: list, unit: str) -> Markup:
+    shown = numbers.unit(unit)
+    if values and isinstance(values[0], dict):
+        parts = [
+            numbers.printed(shell["count"]).html + " at " + numbers.printed(shell["distance"]).html for shell in values
+        ]
+    else:
+        parts = [numbers.printed(round(value, 6)).html for value in values]
+    return Markup("; ").join(parts) + (Markup(numbers.NARROW) + shown if shown else Markup(""))
+
+
+def origin(entry: dict[str, Any], specimens: tuple[str, ...] = ()) -> str:
+    """Where most of the uncertainty comes from, as 'lattice constant a, 97 %'; "" without an uncertainty."""
+    budget = entry.get("budget")
+    if not budget:
+        return ""
+    largest, share = max(budget.items(), key=lambda item: item[1])
+    return f"{words.input_words(largest, specimens)}, {percent(share)}"
+
+
+def percent(share: float) -> str:
+    """A share of variance in whole percent, never rounded up to all of it."""
+    whole = round(100 * share)
+    if whole == 100 and share < 0.9999:
+        return f"over 99{numbers.NARROW}%"
+    return f"{whole}{numbers.NARROW}%"
+
+
+def where(item: Any) -> Markup:
+    """The condition that an entry, a confrontation or a check was taken at: '293.15 K', '1.96 eV', '5 nm' or a name."""
+    get = item.get if isinstance(item, dict) else lambda name: getattr(item, name, None)
+    for axis, unit in (("temperature", "K"), ("photon_energy", "eV"), ("edge", "nm")):
+        if (value := get(axis)) is not None:
+            return numbers.with_unit(numbers.printed(value), unit)
+    return Markup.escape(get("specimen") or "")

@@ -1,0 +1,76 @@
+"""Lays out the handbook: every page, its style, script and fonts, as paths and bytes."""
+
+from __future__ import annotations
+
+import base64
+import hashlib
+from collections.abc import Iterator, Mapping, Sequence
+from typing import Any
+
+from . import front, quantity, reference, words
+from .environment import Press, template_folder
+from .sheet import SheetPage
+
+POLICY = (
+    "default-src 'none'; style-src 'self'{hash}; img-src 'self'; font-src 'self'; script-src 'self'; "
+    "base-uri 'none'; form-action 'none'"
+)
+PAPERS = {"a4": "A4", "letter": "letter"}
+
+
+def lay_out(handbook: Any, figures: Mapping[str, Sequence[Any]]) -> Iterator[tuple[str, bytes]]:
+    """Yield (relative path, content) for every page and all that pages load.
+
+    Raises FaultsError, naming template:line, where a template cannot be rendered.
+    """
+    layout = _Layout(handbook)
+    yield from layout.assets()
+    yield "index.html", layout.page("index.html", "", **front.context(handbook))
+    for sheet in handbook.sheets:
+        yield f"materials/{sheet.record.slug}.html", layout.sheet(sheet, figures.get(sheet.record.slug, ()))
+    for id in dict.fromkeys([*handbook.registry.published(), *handbook.registry.published("specimen")]):
+        yield f"quantities/{id}.html", layout.page("quantity.html", "../", **quantity.context(id, handbook))
+    yield "methods.html", layout.page("methods.html", "", **reference.methods(handbook))
+    yield "limits.html", layout.page("limits.html", "", **reference.limits(handbook))
+    yield "sources.html", layout.page("sources.html", "", **reference.sources(handbook))
+
+
+class _Layout:
+    """One run: the compiled templates and what every page shares."""
+
+    def __init__(self, handbook: Any):
+        self.handbook = handbook
+        self.press = Press()
+        imprint = handbook.imprint
+        self.shared = {
+            "imprint": imprint,
+            "sources_listed": handbook.sources,
+            "language": words.language(imprint.language),
+            "paper": PAPERS.get(imprint.paper.casefold(), "A4"),
+        }
+
+    def assets(self) -> Iterator[tuple[str, bytes]]:
+        """Style sheet (for the imprint's paper), script and fonts."""
+        yield "style/handbook.css", self.press.render("style.css", **self.shared)
+        yield "style/table.js", (template_folder() / "table.js").read_bytes()
+        for font in sorted((template_folder() / "fonts").iterdir()):
+            if font.suffix == ".woff2" or font.name == "OFL.txt":
+                yield f"style/fonts/{font.name}", font.read_bytes()
+
+    def sheet(self, sheet: Any, figures: Sequence[Any]) -> bytes:
+        """The sheet of one material."""
+        context = SheetPage(sheet, self.handbook, figures).context()
+        return self.page("sheet.html", "../", **context)
+
+    def page(self, template: str, root: str, running_head: str = "", **context: Any) -> bytes:
+        """One page; `root` leads from it to the top of the site. Its running head on paper is a CSS string."""
+        head_style = f'@page{{@top-right{{content:"{running_head}"}}}}' if running_head else ""
+        return self.press.render(
+            template, root=root, head_style=head_style, policy=policy(head_style), **self.shared, **context
+        )
+
+
+def policy(style: str = "") -> str:
+    """The content security policy of a page; its one inline style, if it has one, passes by its hash."""
+    digest = base64.b64encode(hashlib.sha256(style.encode()).digest()).decode()
+    return POLICY.format(hash=f" 'sha256-{digest}'" if style else "")

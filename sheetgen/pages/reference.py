@@ -1,0 +1,80 @@
+"""The pages at the back of the handbook: methods, limits of use, sources."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from markupsafe import Markup
+
+from . import citations, numbers
+
+
+def methods(handbook: Any) -> dict[str, Any]:
+    """Every definition by section, and the assumptions with their bounds as this handbook sets them."""
+    registry = handbook.registry
+    ids = dict.fromkeys([*registry.published(), *registry.published("specimen")])
+    sections: dict[str, list[tuple[str, Any]]] = {}
+    for id in ids:
+        definitions = registry.definitions_of(id)
+        sections.setdefault(definitions[0].section, []).append((id, definitions))
+    covered = {a.id: [registry.definitions_of(q)[0] for q in registry.resting_on(a.id)] for a in registry.assumptions}
+    return {
+        "sections": sections,
+        "assumptions": [(a, _bounds(a, handbook), covered[a.id]) for a in _each_once(registry)],
+    }
+
+
+def _each_once(registry: Any) -> list[Any]:
+    """The assumptions, each id once (one may be declared for materials and again for specimens)."""
+    return list({assumption.id: assumption for assumption in reversed(registry.assumptions)}.values())[::-1]
+
+
+def _bounds(assumption: Any, handbook: Any) -> tuple[Markup | None, Markup | None]:
+    sign = "<" if assumption.below else ">"
+    pair = assumption.bounds(handbook.imprint.thresholds)
+    shown = [None if bound is None else Markup.escape(f"{sign} ") + numbers.printed(bound).html for bound in pair]
+    until = assumption.strained_until
+    if until is not None and shown[0] is not None:
+        shown[0] = Markup("between ") + numbers.printed(pair[0]).html + " and " + numbers.printed(until).html
+    return shown[0], shown[1]
+
+
+USES = ("use", "scale", "avoid", "undecided", "unchecked")
+
+
+def limits(handbook: Any) -> dict[str, Any]:
+    """For each quantity in which materials it may be used; those never held against anything are named apart."""
+    rows, silent = [], []
+    for id in handbook.registry.published():
+        uses: dict[str, list] = {use: [] for use in USES}
+        for sheet in handbook.sheets:
+            if sheet.entries(id):
+                use, line = _use(sheet, id)
+                uses[use].append((sheet.record, line))
+        if any(uses[use] for use in USES[:-1]):
+            rows.append((handbook.registry.definitions_of(id)[0], uses))
+        elif uses["unchecked"]:
+            silent.append(handbook.registry.definitions_of(id)[0])
+    return {"rows": rows, "silent": silent}
+
+
+def _use(sheet: Any, id: str) -> tuple[str, dict[str, Any]]:
+    """How a number of a sheet may be used, by its plain answer, else by the standing of its first entry."""
+    for use in USES[:3]:
+        for line in getattr(sheet.answer, use):
+            if line.quantity == id:
+                factor = None
+                if line.factor is not None:
+                    factor = numbers.printed(line.factor, line.factor_uncertainty).html
+                return use, {"reason": line.reason, "factor": factor}
+    standings = {entry["standing"] for entry in sheet.entries(id)}
+    return ("undecided" if "undecided" in standings else "unchecked"), {"reason": "", "factor": None}
+
+
+def sources(handbook: Any) -> dict[str, Any]:
+    """Every source with the values that it supplies; unused ones are listed too."""
+    supplied = citations.supplied_by(handbook.sheets)
+    listed = [
+        (source, citations.safe_link(source.link), supplied.get(key, [])) for key, source in handbook.sources.items()
+    ]
+    return {"sources": sorted(listed, key=lambda item: (item[0].text.casefold(), item[0].key))}

@@ -1,0 +1,131 @@
+"""Words and marks that the pages share: standings, lattices, inputs, hazards, dates, chemical formulas."""
+
+from __future__ import annotations
+
+import datetime
+import re
+
+from markupsafe import Markup
+
+from . import numbers
+
+# In the order in which a reader wants to see them.
+STANDINGS = {
+    "agrees": "the measured value agrees with the model",
+    "adjust": "usable with the stated factor, measured over model",
+    "undecided": "the uncertainty is too large to decide",
+    "fails": "the model is wrong by more than a factor of two, or in sign",
+    "outside": "an assumption that the number rests on is broken here",
+    "unchecked": "nothing measured is at hand to hold it against",
+}
+CONDITIONS = {
+    "holds": "within the first bound",
+    "strained": "beyond the first bound: read the number with care",
+    "broken": "beyond the second bound: the numbers that rest on it are outside the model",
+}
+LATTICES = {
+    "sc": "simple cubic",
+    "bcc": "body-centred cubic",
+    "fcc": "face-centred cubic",
+    "hcp": "hexagonal close-packed",
+    "diamond": "diamond cubic",
+    "zincblende": "zincblende",
+    "rocksalt": "rock salt",
+    "cscl": "caesium chloride",
+    "bct": "body-centred tetragonal",
+}
+_INPUT_WORDS = {
+    "structure.a": "lattice constant a",
+    "structure.b": "lattice constant b",
+    "structure.c": "lattice constant c",
+    "structure.c_over_a": "axial ratio c/a",
+    "structure.alpha": "cell angle α",
+    "structure.beta": "cell angle β",
+    "structure.gamma": "cell angle γ",
+    "electrons.valence": "electrons per atom",
+    "electrons.density": "carrier density",
+    "measured.debye_temperature": "Debye temperature",
+    "measured.transport_debye_temperature": "transport Debye temperature",
+    "measured.hall_coefficient": "Hall coefficient",
+}
+_OPTICAL = re.compile(r"measured\.refractive_index\.(\d+)\.(\w+)")
+_SPECIMEN = re.compile(r"specimens\.(\d+)\.(\w+)")
+
+
+def input_words(identifier: str, specimens: tuple[str, ...] = ()) -> str:
+    """What an input is called on the page: 'structure.a' is the lattice constant a."""
+    name, _, kelvins = identifier.partition("@")
+    at = f" at {kelvins.replace('#', ' K, no. ')}{'' if '#' in kelvins else ' K'}" if kelvins else ""
+    if found := _OPTICAL.fullmatch(name):
+        return f"refractive index, point {found[1]}: {found[2].replace('_', ' ')}"
+    if found := _SPECIMEN.fullmatch(name):
+        number = int(found[1])
+        who = specimens[number - 1] if 0 < number <= len(specimens) else found[1]
+        return f"{found[2].replace('_', ' ')} of {who}"
+    if name.startswith("electrons.valence."):
+        return f"electrons per {name.rpartition('.')[2]} atom"
+    return (_INPUT_WORDS.get(name) or name.rpartition(".")[2].replace("_", " ")) + at
+
+
+def lattice_words(lattice: str) -> str:
+    """The lattice in full: 'fcc' is face-centred cubic."""
+    return LATTICES.get(lattice, lattice.replace("-", " ").replace(" centred", "-centred"))
+
+
+def chemical(formula: str) -> Markup:
+    """A chemical formula with its numbers as subscripts."""
+    safe = str(Markup.escape(formula))
+    return Markup(re.sub(r"(?<=[A-Za-z)\]])(\d+(?:\.\d+)?)", r"<sub>\1</sub>", safe))
+
+
+# Titles that begin with one of these keep their capital inside a sentence.
+_NAMES = ("Fermi", "Hall", "Debye", "Drude", "Landau", "Pauli", "London", "Thomas", "Lorenz", "Wigner", "Hartree")
+
+
+def lower_first(title: str) -> str:
+    """A title as it stands inside a sentence."""
+    return title if title.startswith(_NAMES) or title[1:2].isupper() else title[:1].lower() + title[1:]
+
+
+def sentence(text: str) -> str:
+    """A phrase as a sentence of its own: capital and full stop."""
+    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "!", "?")) else ".")
+
+
+def factor(value: float, uncertainty: float | None) -> Markup:
+    """A factor to scale by, rounded by its uncertainty; three digits where it has none."""
+    return numbers.printed(value if uncertainty else float(f"{value:.3g}"), uncertainty).html
+
+
+def date(text: str) -> str:
+    """An ISO 8601 date in words, as 2 November 2026; any other text as it stands."""
+    try:
+        day = datetime.date.fromisoformat(text)
+    except ValueError:
+        return text
+    return f"{day.day} {day:%B} {day.year}"
+
+
+def language(tag: str) -> str:
+    """The language of the program's own words: the handbook's kind of English, else plain English."""
+    return tag if re.fullmatch(r"en(-[A-Za-z]{2,8})?", tag) else "en"
+
+
+def css_string(text: str) -> str:
+    """The text inside a CSS string, every character that could end or change it written as an escape."""
+    return "".join(char if char.isascii() and char.isalnum() else f"\\{ord(char):x} " for char in text)
+
+
+def joined(items: list[str]) -> str:
+    """Items as a sentence lists them: a, b and c."""
+    return items[0] if len(items) == 1 else f"{', '.join(items[:-1])} and {items[-1]}" if items else ""
+
+
+def unit_of_axis(axis: str) -> tuple[str, str]:
+    """What a list runs over, in words, with its unit."""
+    return {
+        "temperature": ("temperature", "K"),
+        "resistivity": ("temperature of the resistivity", "K"),
+        "edge": ("edge", "nm"),
+        "photon_energy": ("photon energy", "eV"),
+    }[axis]
