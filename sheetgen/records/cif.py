@@ -13,11 +13,11 @@ from sheetgen.records.files import read_text
 from sheetgen.records.lattices import SHAPES, CellShape
 from sheetgen.records.measures import STRUCTURE
 from sheetgen.records.model import Crystal, Site, Value
+from sheetgen.records.nodes import Scalar
 from sheetgen.records.notation import read_number
 from sheetgen.records.structure import ANGLES, build_crystal, sound
 from sheetgen.records.symmetry import cell_shape, expanded, find_space_group, group_lattice_name
-from sheetgen.records.trees import Scalar
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 from sheetgen.records.values import Origin, Reader
 
 if TYPE_CHECKING:
@@ -36,7 +36,11 @@ _CONSTANTS = {
     "beta": "_cell_angle_beta",
     "gamma": "_cell_angle_gamma",
 }
-_OPERATIONS = ("_space_group_symop_operation_xyz", "_space_group_symop.operation_xyz", "_symmetry_equiv_pos_as_xyz")
+_OPERATIONS = (
+    "_space_group_symop_operation_xyz",
+    "_space_group_symop.operation_xyz",
+    "_symmetry_equiv_pos_as_xyz",
+)
 _GROUPS = (
     "_space_group_name_H-M_alt",
     "_symmetry_space_group_name_H-M",
@@ -53,11 +57,14 @@ def read_cif(node: Scalar, reader: Reader, folder: Path) -> Crystal | None:
     """The crystal of a CIF, or None with a fault logged."""
     name = node.text.strip()
     if not _NAME.fullmatch(name):
-        reader.fault(node, f"cif: '{name[:60]}' is no name of a CIF; expected a file beside the record, such as copper.cif.")
+        reader.fault(
+            node,
+            f"cif: {shown(name)} is no name of a CIF; expected a file beside the record, such as copper.cif.",
+        )
         return None
     path = folder / name
     if not path.exists() and not path.is_symlink():
-        reader.fault(node, f"cif: there is no file '{name}' beside the record; put it there, or correct the name.")
+        reader.fault(node, f"cif: there is no file {shown(name)} beside the record; put it there, or correct the name.")
         return None
     text = read_text(path, folder, reader.log, MAXIMUM_BYTES)
     return None if text is None else _read(text, path, reader)
@@ -74,7 +81,10 @@ def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
     blocks = [block for block in document if block.find_value("_cell_length_a")]
     if len(blocks) != 1:
         found = "no block" if not blocks else f"{len(blocks)} blocks ({', '.join(block.name for block in blocks[:5])})"
-        reader.fault(Place(str(path)), f"{found} with a cell; expected one. Keep the block of this material alone, with its cell.")
+        reader.fault(
+            Place(str(path)),
+            f"{found} with a cell; expected one. Keep the block of this material alone, with its cell.",
+        )
         return None
     try:
         return _Block(blocks[0], path, reader).crystal()
@@ -159,29 +169,37 @@ class _Block:
         try:
             return gemmi.Op(text)
         except (RuntimeError, ValueError):
-            raise UnreadableError(f"'{text[:60]}' is no symmetry operation; expected such as '-x, y+1/2, -z'") from None
+            raise UnreadableError(f"{shown(text)} is no symmetry operation; expected such as '-x, y+1/2, -z'") from None
 
     def _group(self) -> gemmi.SpaceGroup:
         for tag in _GROUPS:
             if written := self._text(tag):
                 return find_space_group(written)
-        raise UnreadableError("no symmetry is stated; expected a space group or its operations. Add the one or the other")
+        raise UnreadableError(
+            "no symmetry is stated; expected a space group or its operations. Add the one or the other"
+        )
 
     def _check_ties(self, constants: dict[str, Value], shape: CellShape) -> None:
         """A fault where the cell contradicts its own symmetry."""
         for key, fixed in zip(ANGLES, shape.angles, strict=True):
             if fixed is not None and abs(constants[key].value - fixed) > 0.01:
-                raise UnreadableError(f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry fixes {fixed:g}°; correct one of them")
+                raise UnreadableError(
+                    f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry fixes {fixed:g}°; correct one of them"
+                )
         for key in ("b", "c"):
             tied = key not in shape.read
             if tied and abs(constants[key].si / constants["a"].si - 1) > 1e-4:
-                raise UnreadableError(f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry makes it equal to a; correct one of them")
+                raise UnreadableError(
+                    f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry makes it equal to a; correct one of them"
+                )
 
     def _atoms(self) -> list[Site]:
         tags = ["label", "?type_symbol", "fract_x", "fract_y", "fract_z", "?occupancy"]
         table = self.block.find("_atom_site_", tags)
         if not 0 < len(table) <= MAXIMUM_ATOMS:
-            raise UnreadableError(f"{len(table)} atom sites with fractional coordinates; expected 1 to {MAXIMUM_ATOMS}. Add the loop of _atom_site_fract_x, y and z")
+            raise UnreadableError(
+                f"{len(table)} atom sites with fractional coordinates; expected 1 to {MAXIMUM_ATOMS}. Add the loop of _atom_site_fract_x, y and z"
+            )
         return [self._atom(row) for row in table]
 
     def _atom(self, row: gemmi.cif.Table.Row) -> Site:
@@ -191,11 +209,13 @@ class _Block:
         candidates = (found[0].capitalize(), found[0][0].upper()) if found else ()
         element = next((candidate for candidate in candidates if candidate in elements()), None)
         if element is None:
-            raise UnreadableError(f"the atom site '{label[:40]}' names no element; expected a type symbol such as Ti")
+            raise UnreadableError(f"the atom site {shown(label)} names no element; expected a type symbol such as Ti")
         position = tuple(snapped(_fraction(row.str(index), label)) for index in (2, 3, 4))
         occupancy = _fraction(row.str(5), label) if row.has(5) and row.str(5) not in "?." else 1.0
         if not 0 < occupancy <= 1:
-            raise UnreadableError(f"the atom site '{label[:40]}' has the occupancy {occupancy:g}; expected above 0 and at most 1")
+            raise UnreadableError(
+                f"the atom site {shown(label)} has the occupancy {occupancy:g}; expected above 0 and at most 1"
+            )
         return Site(element, position, occupancy)
 
 
@@ -204,6 +224,8 @@ def _fraction(text: str, label: str) -> float:
         number = read_number(text)
     except UnreadableError:
         number = None
-    if number is None or number.rest or abs(number.value) > 10:
-        raise UnreadableError(f"the atom site '{label[:40]}' has '{text[:40]}' for a number; expected such as 0.25 or 0.2345(2)")
+    if number is None or number.unit or abs(number.value) > 10:
+        raise UnreadableError(
+            f"the atom site {shown(label)} has {shown(text)} for a number; expected such as 0.25 or 0.2345(2)"
+        )
     return number.value

@@ -7,8 +7,9 @@ from collections.abc import Mapping
 from sheetgen.faults import did_you_mean
 from sheetgen.records.measures import DENSITIES, ELECTRONS, VALENCE
 from sheetgen.records.model import Electrons, Value
+from sheetgen.records.nodes import Node, Table
 from sheetgen.records.spelling import written_key
-from sheetgen.records.trees import Node, Table
+from sheetgen.records.unreadable import shown
 from sheetgen.records.values import Reader, text_of
 
 
@@ -46,11 +47,17 @@ def _check_choice(table: Table, dimension: int, reader: Reader) -> None:
     """Exactly one of valence and density; a two-dimensional gas has no valence."""
     valence, density = table.entries.get("valence"), table.entries.get("density")
     if valence and density:
-        reader.fault(density.key.place, "both valence and density are given; keep the one that the electrons are counted by.")
+        reader.fault(
+            density.key.place,
+            "both valence and density are given; keep the one that the electrons are counted by.",
+        )
     elif not valence and not density:
         reader.fault(table, "electrons has neither valence nor density; add 'valence: 1' or the like.")
     elif valence and dimension == 2:
-        reader.fault(valence.key.place, "a valence does not count the electrons of a two-dimensional gas; give 'density' per area instead.")
+        reader.fault(
+            valence.key.place,
+            "a valence does not count the electrons of a two-dimensional gas; give 'density' per area instead.",
+        )
 
 
 def _valence(
@@ -62,7 +69,10 @@ def _valence(
         inputs |= {f"valence.{element}": value for element, value in valence.items()}
     elif len(composition) > 1:
         first = next(iter(composition))
-        reader.fault(node, f"valence is one number for a compound; expected a mapping from each of {_listed(composition)} to its electrons, such as {{{first}: 1, …}}.")
+        reader.fault(
+            node,
+            f"valence is one number for a compound; expected a mapping from each of {_listed(composition)} to its electrons, such as {{{first}: 1, …}}.",
+        )
         return None
     else:
         value = reader.value(node, VALENCE, "valence")
@@ -82,12 +92,15 @@ def _by_element(table: Table, composition: Mapping[str, float], reader: Reader) 
         if key not in composition:
             reader.fault(
                 entry.key.place,
-                f"valence names '{entry.key.text}', which is not in the formula; expected {_listed(composition)}."
+                f"valence names {shown(entry.key.text)}, which is not in the formula; expected {_listed(composition)}."
                 f"{did_you_mean(key, composition)}",
             )
     missing = [element for element in composition if element not in table.entries]
     if missing:
-        reader.fault(table, f"valence does not name {_listed(missing)}; add the electrons of each, 0 where it gives none.")
+        reader.fault(
+            table,
+            f"valence does not name {_listed(missing)}; add the electrons of each, 0 where it gives none.",
+        )
     found = {
         element: reader.value(table.entries[element].node, VALENCE, f"valence of {element}")
         for element in composition

@@ -21,7 +21,13 @@ SUFFIXES = (".yaml", ".yml")
 _SLUG = re.compile(r"[a-z0-9]+(?:-[a-z0-9]+)*")
 _LONGEST_SLUG = 64
 # Names that are devices on Windows, where a checkout or a site may also live.
-_DEVICES = {"con", "prn", "aux", "nul", *(f"{port}{number}" for port in ("com", "lpt") for number in range(10))}
+_DEVICES = {
+    "con",
+    "prn",
+    "aux",
+    "nul",
+    *(f"{port}{number}" for port in ("com", "lpt") for number in range(10)),
+}
 
 
 def read_folder(path: Path | str) -> Folder:
@@ -91,11 +97,20 @@ def _slugs(folder: Path, names: list[str], log: FaultLog) -> list[str]:
         place = Place(str(folder / name))
         stem, suffix = name.rsplit(".", 1)
         if stem.lower() in fit:
-            log.fault(place, f"'{name}' and '{fit[stem.lower()]}' are one name on many disks and one address; rename one of them.")
+            log.fault(
+                place,
+                f"'{name}' and '{fit[stem.lower()]}' are one name on many disks and one address; rename one of them.",
+            )
         elif not _SLUG.fullmatch(stem) or len(stem) > _LONGEST_SLUG or suffix != suffix.lower():
-            log.fault(place, f"the file name '{name}' cannot be an address; expected lower-case letters, digits and hyphens, such as indium-tin-oxide.yaml. Rename it.")
+            log.fault(
+                place,
+                f"the file name '{name}' cannot be an address; expected lower-case letters, digits and hyphens, such as indium-tin-oxide.yaml. Rename it.",
+            )
         elif stem in _DEVICES:
-            log.fault(place, f"the file name '{name}' is a device on Windows; choose another, such as {stem}-1.yaml.")
+            log.fault(
+                place,
+                f"the file name '{name}' is a device on Windows; choose another, such as {stem}-1.yaml.",
+            )
         fit.setdefault(stem.lower(), name)
     return list(fit.values())
 

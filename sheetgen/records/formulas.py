@@ -7,7 +7,7 @@ from collections import Counter
 
 from sheetgen.faults import did_you_mean
 from sheetgen.records.elements import elements
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 
 MAXIMUM_LENGTH = 120
 MAXIMUM_DEPTH = 5
@@ -36,11 +36,11 @@ def composition(formula: str) -> dict[str, float]:
         if token["opening"]:
             groups.append(Counter())
             if len(groups) > MAXIMUM_DEPTH:
-                raise UnreadableError(f"formula '{formula}' has brackets nested deeper than {MAXIMUM_DEPTH}")
+                raise UnreadableError(f"formula {shown(formula)} has brackets nested deeper than {MAXIMUM_DEPTH}")
             continue
         if token["closing"]:
             if len(groups) == 1:
-                raise UnreadableError(f"formula '{formula}' closes a bracket that it never opened; remove it")
+                raise UnreadableError(f"formula {shown(formula)} closes a bracket that it never opened; remove it")
             group = groups.pop()
         else:
             group = Counter({_known(token["element"], formula): 1})
@@ -48,7 +48,7 @@ def composition(formula: str) -> dict[str, float]:
         for element, number in group.items():
             groups[-1][element] += number * count
     if len(groups) > 1:
-        raise UnreadableError(f"formula '{formula}' leaves a bracket open; close it")
+        raise UnreadableError(f"formula {shown(formula)} leaves a bracket open; close it")
     return _bounded(dict(groups[0]), formula)
 
 
@@ -56,7 +56,7 @@ def _known(symbol: str, formula: str) -> str:
     if symbol in elements():
         return symbol
     raise UnreadableError(
-        f"formula '{formula}' names '{symbol}', which is no element;"
+        f"formula {shown(formula)} names {shown(symbol)}, which is no element;"
         f" expected symbols such as Cu or Ga.{did_you_mean(symbol, elements())}"
     )
 
@@ -66,20 +66,20 @@ def _count(text: str, position: int, formula: str) -> tuple[float, int]:
     if not number:
         return 1.0, position
     if float(number[0]) == 0:
-        raise UnreadableError(f"formula '{formula}' counts an element or a bracket 0 times; leave it out")
+        raise UnreadableError(f"formula {shown(formula)} counts an element or a bracket 0 times; leave it out")
     return float(number[0]), number.end()
 
 
 def _unexpected(formula: str, character: str) -> str:
     return (
-        f"formula '{formula}' has an unexpected '{character}';"
+        f"formula {shown(formula)} has an unexpected {shown(character)};"
         " expected element symbols, counts and brackets, such as GaAs or Al0.3Ga0.7As"
     )
 
 
 def _bounded(counts: dict[str, float], formula: str) -> dict[str, float]:
     if not counts:
-        raise UnreadableError(f"formula '{formula}' names no element; expected such as GaAs")
+        raise UnreadableError(f"formula {shown(formula)} names no element; expected such as GaAs")
     if max(counts.values()) > MAXIMUM_COUNT:
-        raise UnreadableError(f"formula '{formula}' counts more than {MAXIMUM_COUNT} atoms of one element")
+        raise UnreadableError(f"formula {shown(formula)} counts more than {MAXIMUM_COUNT} atoms of one element")
     return counts

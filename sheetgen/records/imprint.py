@@ -7,10 +7,10 @@ from pathlib import Path
 
 from sheetgen.faults import Place, did_you_mean
 from sheetgen.records.model import Imprint
-from sheetgen.records.spelling import key_variants, written_key
-from sheetgen.records.trees import Listing, Node, Scalar, Table
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.nodes import Listing, Node, Scalar, Table
+from sheetgen.records.spelling import written_key
 from sheetgen.records.units import read_unit
+from sheetgen.records.unreadable import UnreadableError, shown
 from sheetgen.records.values import Reader, text_of
 
 FILE_NAME = "handbook.yaml"
@@ -66,14 +66,20 @@ def _check_keys(root: Table, reader: Reader) -> None:
         if key not in _KEYS:
             names = list(map(written_key, _KEYS))
             guess = did_you_mean(key.replace("_", " "), names)
-            reader.fault(entry.key.place, f"unknown key '{entry.key.text[:60]}'; expected one of {', '.join(names)}.{guess}")
+            reader.fault(
+                entry.key.place,
+                f"unknown key {shown(entry.key.text)}; expected one of {', '.join(names)}.{guess}",
+            )
 
 
 def _text(node: Node | None, key: str, reader: Reader) -> str:
     if node is None:
         return ""
     if not isinstance(node, Scalar) or not node.text.strip() or len(node.text) > _LONGEST_TEXT:
-        reader.fault(node, f"{written_key(key)}: expected a text of 1 to {_LONGEST_TEXT} characters; write one, or leave the key out.")
+        reader.fault(
+            node,
+            f"{written_key(key)}: expected a text of 1 to {_LONGEST_TEXT} characters; write one, or leave the key out.",
+        )
         return ""
     return node.text.strip()
 
@@ -81,7 +87,7 @@ def _text(node: Node | None, key: str, reader: Reader) -> str:
 def _check_form(root: Table, key: str, form: re.Pattern[str], expected: str, reader: Reader) -> None:
     text = text_of(root.node(key))
     if text and not form.fullmatch(text):
-        reader.fault(root.node(key), f"{written_key(key)}: found '{text}'; expected {expected}.")
+        reader.fault(root.node(key), f"{written_key(key)}: found {shown(text)}; expected {expected}.")
 
 
 def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
@@ -95,7 +101,7 @@ def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
         node = Scalar(f"{node.text.strip()} K", node.plain, node.place)
     kelvins = reader.temperature(node, name)
     if kelvins is not None and kelvins <= 0:
-        reader.fault(node, f"{name}: '{node.text}' is absolute zero; expected a temperature above it.")
+        reader.fault(node, f"{name}: {shown(node.text)} is absolute zero; expected a temperature above it.")
         return None
     return kelvins
 
@@ -104,7 +110,10 @@ def _temperatures(node: Node | None, reader: Reader) -> tuple[float, ...]:
     if node is None:
         return TEMPERATURES
     if not isinstance(node, Listing) or not 0 < len(node.items) <= MAXIMUM_TEMPERATURES:
-        reader.fault(node, f"temperatures: expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C].")
+        reader.fault(
+            node,
+            f"temperatures: expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C].",
+        )
         return TEMPERATURES
     found = [_temperature(item, "temperatures", reader) for item in node.items]
     return tuple(kelvins for kelvins in found if kelvins is not None)
@@ -119,7 +128,7 @@ def _paper(node: Node | None, reader: Reader) -> str:
     if node is None:
         return "A4"
     if (paper := PAPERS.get(text_of(node).lower())) is None:
-        reader.fault(node, f"paper: found '{text_of(node)}'; expected A4 or letter.")
+        reader.fault(node, f"paper: found {shown(text_of(node))}; expected A4 or letter.")
         return "A4"
     return paper
 
@@ -152,9 +161,15 @@ def _thresholds(node: Node | None, reader: Reader) -> dict[str, float | tuple[fl
         if key in THRESHOLDS:
             thresholds[key] = _threshold(entry.node, key, reader)
         elif not _IDENTIFIER.fullmatch(key):
-            reader.fault(entry.key.place, f"'{entry.key.text[:60]}' is no id of an assumption; expected such as degenerate_gas.")
+            reader.fault(
+                entry.key.place,
+                f"{shown(entry.key.text)} is no id of an assumption; expected such as degenerate_gas.",
+            )
         elif not isinstance(entry.node, Listing) or len(entry.node.items) != 2:
-            reader.fault(entry.node, f"the bounds of {key} are two: expected [strained, broken] such as [0.1, 0.3], with null for one that does not exist.")
+            reader.fault(
+                entry.node,
+                f"the bounds of {key} are two: expected [strained, broken] such as [0.1, 0.3], with null for one that does not exist.",
+            )
         else:
             thresholds[key] = tuple(_bound(item, key, reader) for item in entry.node.items)
     return {key: value for key, value in thresholds.items() if value is not None}
@@ -164,7 +179,7 @@ def _threshold(node: Node, key: str, reader: Reader) -> float | None:
     number = _number(node)
     low, high = {"agrees": (0, 1), "adjust": (1, 1000), "undecided": (0, 10)}[key]
     if number is None or not low < number <= high:
-        reader.fault(node, f"{key}: found '{text_of(node)}'; expected a number above {low} and at most {high}.")
+        reader.fault(node, f"{key}: found {shown(text_of(node))}; expected a number above {low} and at most {high}.")
         return None
     return number
 
@@ -173,7 +188,7 @@ def _bound(node: Node, key: str, reader: Reader) -> float | None:
     if text_of(node) in ("", "~", "null"):
         return None
     if (number := _number(node)) is None or number <= 0:
-        reader.fault(node, f"{key}: found '{text_of(node)}'; expected a number above 0, or null.")
+        reader.fault(node, f"{key}: found {shown(text_of(node))}; expected a number above 0, or null.")
         return None
     return number
 
@@ -190,7 +205,14 @@ def _own_quantities(node: Node | None, folder: Path, reader: Reader) -> Path | N
     if node is None:
         return None
     name = text_of(node)
-    if not re.fullmatch(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py", name) or not (folder / name).is_file() or (folder / name).is_symlink():
-        reader.fault(node, f"own quantities: '{name[:60]}' is no Python file beside handbook.yaml; expected a name such as quantities.py.")
+    if (
+        not re.fullmatch(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py", name)
+        or not (folder / name).is_file()
+        or (folder / name).is_symlink()
+    ):
+        reader.fault(
+            node,
+            f"own quantities: {shown(name)} is no Python file beside handbook.yaml; expected a name such as quantities.py.",
+        )
         return None
     return folder / name

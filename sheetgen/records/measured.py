@@ -6,15 +6,22 @@ from collections.abc import Iterable, Sequence
 
 from sheetgen.records.measures import MEASURED, OPTICAL
 from sheetgen.records.model import OpticalPoint, Value
+from sheetgen.records.nodes import Table
 from sheetgen.records.spelling import written_key
-from sheetgen.records.trees import Table
+from sheetgen.records.unreadable import shown
 from sheetgen.records.values import Origin, Reader
 
 # A value counts as taken at the reference temperature when it is this near (K).
 REFERENCE_WINDOW = 5.0
 RESISTIVE = {3: "resistivity", 2: "sheet_resistance"}
 # Values that mean little without the temperature at which they were taken.
-_AT_A_TEMPERATURE = ("resistivity", "sheet_resistance", "hall_coefficient", "thermal_conductivity", "thermopower")
+_AT_A_TEMPERATURE = (
+    "resistivity",
+    "sheet_resistance",
+    "hall_coefficient",
+    "thermal_conductivity",
+    "thermopower",
+)
 
 
 def read_measured(table: Table, dimension: int, reader: Reader) -> dict[str, tuple[Value, ...]]:
@@ -48,7 +55,10 @@ def _optical_point(table: Table, reader: Reader) -> OpticalPoint | None:
 def _remark_missing_temperature(values: Iterable[Value], name: str, reader: Reader) -> None:
     for value in values:
         if value.temperature is None:
-            reader.remark(value.place, f"{name} has no temperature; it counts as taken at the reference temperature. Add 'at: 293 K' or the like.")
+            reader.remark(
+                value.place,
+                f"{name} has no temperature; it counts as taken at the reference temperature. Add 'at: 293 K' or the like.",
+            )
 
 
 def _check_dimension(table: Table, dimension: int, reader: Reader) -> None:
@@ -60,7 +70,7 @@ def _check_dimension(table: Table, dimension: int, reader: Reader) -> None:
         if entry := table.entries.get(key):
             reader.fault(
                 entry.key.place,
-                f"'{entry.key.text}' does not belong to a gas of {dimension} dimensions; expected '{instead}'."
+                f"{shown(entry.key.text)} does not belong to a gas of {dimension} dimensions; expected '{instead}'."
                 " Give that, or correct 'dimension' under 'electrons'.",
             )
 
@@ -82,7 +92,7 @@ def check_residual(measured: dict[str, tuple[Value, ...]], reference: float, rea
         if residual.si > resistivities[index].si:
             reader.fault(
                 residual.place,
-                f"residual resistivity: '{residual.text}' is above the reference resistivity '{resistivities[index].text}';"
+                f"residual resistivity: {shown(residual.text)} is above the reference resistivity '{resistivities[index].text}';"
                 " expected less. Check both numbers and their units.",
             )
 

@@ -11,11 +11,12 @@ from sheetgen.records.formulas import composition as composition_of
 from sheetgen.records.measured import check_residual, measured_inputs, read_measured, read_optical
 from sheetgen.records.measures import OPTICAL
 from sheetgen.records.model import Caution, Crystal, Electrons, Record, Review, Value
+from sheetgen.records.nodes import Listing, Scalar, Table
 from sheetgen.records.shape import has_record_shape
 from sheetgen.records.specimens import read_specimens, specimen_inputs
 from sheetgen.records.structure import check_content, read_structure
-from sheetgen.records.trees import Listing, Scalar, Table, read_tree
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.trees import read_tree
+from sheetgen.records.unreadable import UnreadableError, shown
 from sheetgen.records.values import Reader, text_of
 
 
@@ -86,10 +87,16 @@ def _structure(
 def _electrons(root: Table, composition: dict[str, float], reader: Reader) -> tuple[Electrons, dict[str, Value]]:
     table = root.node("electrons")
     if table is None:
-        reader.remark(root, "the record has no electrons; nothing about the electron gas can be derived. Add valence or density.")
+        reader.remark(
+            root,
+            "the record has no electrons; nothing about the electron gas can be derived. Add valence or density.",
+        )
         return Electrons(), {}
     if "valence" in table.entries and "structure" not in root.entries:
-        reader.remark(table.entries["valence"].key.place, "a valence gives no electron density without a structure; add one, or give 'density'.")
+        reader.remark(
+            table.entries["valence"].key.place,
+            "a valence gives no electron density without a structure; add one, or give 'density'.",
+        )
     return read_electrons(table, composition, reader)
 
 
@@ -113,5 +120,5 @@ def _review(table: Table | None, reader: Reader) -> Review | None:
         try:
             date.fromisoformat(day.text.strip())
         except ValueError:
-            reader.fault(day, f"date: '{day.text}' is no date; expected the form 2026-11-02.")
+            reader.fault(day, f"date: {shown(day.text)} is no date; expected the form 2026-11-02.")
     return Review(text_of(table.node("state")), text_of(table.node("by")), text_of(day))

@@ -6,7 +6,7 @@ import re
 import unicodedata
 from collections.abc import Mapping, Sequence
 
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 
 _LATEX = re.compile(r"[\\{}$~]|--")
 _MATH = re.compile(r"\$([^$]*)\$")
@@ -34,7 +34,7 @@ def plain_text(latex: str) -> str:
     try:
         decoded = str(Text.from_latex(without_math))
     except PybtexSyntaxError:
-        raise UnreadableError(f"the braces of '{latex[:60]}' do not match; close each that is open") from None
+        raise UnreadableError(f"the braces of {shown(latex)} do not match; close each that is open") from None
     return " ".join(_COMMAND.sub(_command, decoded).replace("\u00a0", " ").split())
 
 
@@ -55,7 +55,7 @@ def _command(match: re.Match[str]) -> str:
 
 def person_name(bibtex: str) -> str:
     """A name in reading order: `Matula, R. A.` as `R. A. Matula`. Raises UnreadableError for too many commas."""
-    from pybtex.database import InvalidNameString, Person
+    from pybtex.database import Person
 
     if bibtex.strip().lower() == "others":
         return "others"
@@ -64,8 +64,16 @@ def person_name(bibtex: str) -> str:
     with pybtex.errors.capture() as errors:
         person = Person(bibtex)
     if errors:
-        raise UnreadableError(f"the name '{bibtex}' has too many commas; write 'Family, Given' and put 'and' between names")
-    parts = (person.first_names, person.middle_names, person.prelast_names, person.last_names, person.lineage_names)
+        raise UnreadableError(
+            f"the name {shown(bibtex)} has too many commas; write 'Family, Given' and put 'and' between names"
+        )
+    parts = (
+        person.first_names,
+        person.middle_names,
+        person.prelast_names,
+        person.last_names,
+        person.lineage_names,
+    )
     return plain_text(" ".join(word for words in parts for word in words))
 
 
@@ -103,11 +111,11 @@ def link_of(fields: Mapping[str, str]) -> str | None:
     if doi := fields.get("doi"):
         bare = _DOI_PREFIX.sub("", doi.replace("\\_", "_").strip())
         if not _DOI.fullmatch(bare):
-            raise UnreadableError(f"the doi '{doi}' is none; expected a form such as 10.1063/1.555614")
+            raise UnreadableError(f"the doi {shown(doi)} is none; expected a form such as 10.1063/1.555614")
         return f"https://doi.org/{bare}"
     if url := fields.get("url"):
         address = url.replace("\\_", "_").replace("\\%", "%").replace("\\&", "&").strip()
         if not _WEB.fullmatch(address):
-            raise UnreadableError(f"the url '{url}' is no web address; expected one that begins with https://")
+            raise UnreadableError(f"the url {shown(url)} is no web address; expected one that begins with https://")
         return address
     return None

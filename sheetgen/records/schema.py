@@ -45,7 +45,14 @@ def _object(description: str, properties: Schema, required: tuple[str, ...] = ()
 
 
 def _list(description: str, items: Schema, **more: object) -> Schema:
-    return {"type": "array", "description": description, "items": items, "minItems": 1, "maxItems": 1000, **more}
+    return {
+        "type": "array",
+        "description": description,
+        "items": items,
+        "minItems": 1,
+        "maxItems": 1000,
+        **more,
+    }
 
 
 _TRUTH: Schema = {"type": "boolean", "description": "true or false"}
@@ -81,7 +88,12 @@ def _values(measure: Measure) -> Schema:
     """A value or a list of values."""
     single = _value(measure)
     description = f"{single['description']}, or a list of these"
-    return single | {"type": [*single["type"], "array"], "description": description, "items": single, "minItems": 1}
+    return single | {
+        "type": [*single["type"], "array"],
+        "description": description,
+        "items": single,
+        "minItems": 1,
+    }
 
 
 def _structure() -> Schema:
@@ -92,7 +104,10 @@ def _structure() -> Schema:
             "position": {
                 "type": "array",
                 "description": "three fractions of the cell edges such as [0, 1/2, 0.25]",
-                "items": {"type": ["number", "string"], "description": "a fraction of a cell edge such as 0.25 or 1/4"},
+                "items": {
+                    "type": ["number", "string"],
+                    "description": "a fraction of a cell edge such as 0.25 or 1/4",
+                },
                 "minItems": 3,
                 "maxItems": 3,
             },
@@ -124,7 +139,12 @@ def _electrons() -> Schema:
             "density": _value(measures.DENSITIES[3]),
             "dimension": _choice("3 or 2", [3, 2]),
             **{key: _value(measure) for key, measure in measures.ELECTRONS.items()},
-            "valleys": {"type": "integer", "minimum": 1, "maximum": 100, "description": "a whole number of valleys from 1 to 100"},
+            "valleys": {
+                "type": "integer",
+                "minimum": 1,
+                "maximum": 100,
+                "description": "a whole number of valleys from 1 to 100",
+            },
             "charge": _choice("electron or hole", ["electron", "hole"]),
             "note": _text("a remark in words", 2000),
         },
@@ -159,7 +179,11 @@ def _specimen() -> Schema:
 
 
 def _caution() -> Schema:
-    code: Schema = {"type": "string", "pattern": HAZARD_PATTERN, "description": "a GHS hazard code such as H228"}
+    code: Schema = {
+        "type": "string",
+        "pattern": HAZARD_PATTERN,
+        "description": "a GHS hazard code such as H228",
+    }
     return {
         "type": ["string", "object"],
         "description": "a text, or a mapping with text and hazard",
@@ -167,7 +191,8 @@ def _caution() -> Schema:
         "maxLength": 2000,
         "properties": {
             "text": _text("a caution in words", 2000),
-            "hazard": code | {
+            "hazard": code
+            | {
                 "type": ["string", "array"],
                 "description": "a GHS hazard code such as H228, or a list of them",
                 "items": code,

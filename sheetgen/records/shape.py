@@ -8,10 +8,11 @@ from itertools import islice
 from typing import TYPE_CHECKING
 
 from sheetgen.faults import FaultLog, Place, did_you_mean
+from sheetgen.records.nodes import Listing, Node, Scalar, Table, found, plain_data
 from sheetgen.records.schema import canonical_schema, validator
 from sheetgen.records.spelling import written_key
 from sheetgen.records.structure import canonical_lattice
-from sheetgen.records.trees import Listing, Node, Scalar, Table, plain_data
+from sheetgen.records.unreadable import shown
 
 if TYPE_CHECKING:
     from jsonschema.exceptions import ValidationError
@@ -45,9 +46,9 @@ def _faults(error: ValidationError, root: Table) -> Iterator[tuple[Place, str]]:
     elif error.validator == "enum":
         options = [str(option) for option in error.validator_value]
         guess = did_you_mean(node.text, options) if isinstance(node, Scalar) else ""
-        yield node.place, f"{name}: found {_found(node)}; expected {_one_of(options)}.{guess}"
+        yield node.place, f"{name}: found {found(node)}; expected {_one_of(options)}.{guess}"
     else:
-        yield node.place, f"{name}: found {_found(node)}; expected {expected}{_limit(error)}."
+        yield node.place, f"{name}: found {found(node)}; expected {expected}{_limit(error)}."
 
 
 def _node_at(root: Node, path: Iterable[str | int]) -> Node:
@@ -63,18 +64,12 @@ def _name(path: Iterable[str | int]) -> str:
     return written_key(keys[-1]) if keys else "the record"
 
 
-def _found(node: Node) -> str:
-    if isinstance(node, Table):
-        return "a mapping"
-    if isinstance(node, Listing):
-        return f"a list of {len(node.items)}"
-    if not node.text:
-        return "nothing"
-    return f"'{node.text}'" if len(node.text) <= 60 else f"a text of {len(node.text)} characters"
-
-
 def _limit(error: ValidationError) -> str:
-    limits = {"maxLength": "of at most {} characters", "maxItems": "of at most {}", "minItems": "of at least {}"}
+    limits = {
+        "maxLength": "of at most {} characters",
+        "maxItems": "of at most {}",
+        "minItems": "of at least {}",
+    }
     return f", {limits[error.validator].format(error.validator_value)}" if error.validator in limits else ""
 
 
@@ -89,10 +84,9 @@ def _unknown_keys(table: Table, schema: dict, name: str) -> Iterator[tuple[Place
         if key in known or any(pattern.search(key) for pattern in patterns):
             continue
         expected = ", ".join(map(written_key, known))
-        written = entry.key.text if len(entry.key.text) <= 60 else entry.key.text[:57] + "…"
         where = "" if name == "the record" else f" of {name}"
-        mend = _elsewhere(key, known) or did_you_mean(key.replace("_", " "), map(written_key, known))
-        yield entry.key.place, f"unknown key '{written}'{where}; expected one of {expected}.{mend}"
+        mend = _elsewhere(key, known) or did_you_mean(key.replace("_", " ")[:60], map(written_key, known))
+        yield entry.key.place, f"unknown key {shown(entry.key.text)}{where}; expected one of {expected}.{mend}"
 
 
 def _elsewhere(key: str, known: dict) -> str:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 from pathlib import Path
 from typing import NamedTuple
@@ -11,7 +10,7 @@ from sheetgen.faults import FaultLog, Place
 from sheetgen.records.files import place_of
 from sheetgen.records.model import Source
 from sheetgen.records.references import link_of, person_name, plain_text, reference
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 
 MAXIMUM_BYTES = 4_000_000
 MAXIMUM_FIELD = 20_000
@@ -36,12 +35,15 @@ def read_sources(text: str, path: Path, log: FaultLog) -> dict[str, Source]:
     for entry in _entries(text, str(path), log):
         if entry.key in sources:
             first = sources[entry.key].place.line
-            log.fault(entry.place, f"the source '{entry.key}' stands a second time (first in line {first}); keep one of them.")
+            log.fault(
+                entry.place,
+                f"the source {shown(entry.key)} stands a second time (first in line {first}); keep one of them.",
+            )
             continue
         try:
             sources[entry.key] = _source(entry)
         except UnreadableError as error:
-            log.fault(entry.place, f"the source '{entry.key}': {error}.")
+            log.fault(entry.place, f"the source {shown(entry.key)}: {error}.")
     return sources
 
 
@@ -59,7 +61,10 @@ def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
 
     def note(error: PybtexSyntaxError) -> None:
         what = str(error).split(": ", 1)[-1]
-        log.fault(Place(file, error.lineno), f"not readable as BibTeX: {what}. Check the braces, quotes and commas of this entry and of the one before.")
+        log.fault(
+            Place(file, error.lineno),
+            f"not readable as BibTeX: {what}. Check the braces, quotes and commas of this entry and of the one before.",
+        )
 
     parser = BoundedParser(text, handle_error=note)
     for kind, content in parser:
@@ -74,7 +79,7 @@ def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
 def _source(entry: _Entry) -> Source:
     names = [name for name, _ in entry.fields]
     if repeated := next((name for name in names if names.count(name) > 1), None):
-        raise UnreadableError(f"the field '{repeated}' stands twice; keep one of them")
+        raise UnreadableError(f"the field {shown(repeated)} stands twice; keep one of them")
     written = dict(entry.fields)
     people = {role: _people(written[role]) for role in _PEOPLE if role in written}
     fields = {name: plain_text(value) for name, value in written.items() if name not in _PEOPLE}

@@ -5,8 +5,9 @@ from __future__ import annotations
 from sheetgen.records.cells import nearest_neighbour_distance
 from sheetgen.records.measures import FORMS, SPECIMEN
 from sheetgen.records.model import Crystal, Specimen, Value
+from sheetgen.records.nodes import Listing, Table
 from sheetgen.records.spelling import written_key
-from sheetgen.records.trees import Listing, Table
+from sheetgen.records.unreadable import shown
 from sheetgen.records.values import Reader, text_of, truth
 
 SIZES = ("thickness", "diameter", "edge")
@@ -40,7 +41,10 @@ def _specimen(table: Table, smallest: float, reader: Reader) -> Specimen:
     for key in SIZES:
         size = values[key]
         if size and size.si < smallest * (1 - 1e-9):
-            reader.fault(size.place, f"{key}: '{size.text}' is thinner than one atom; expected at least the nearest-neighbour distance, {smallest * 1e9:.4g} nm. Check the number and its unit.")
+            reader.fault(
+                size.place,
+                f"{key}: {shown(size.text)} is thinner than one atom; expected at least the nearest-neighbour distance, {smallest * 1e9:.4g} nm. Check the number and its unit.",
+            )
     return Specimen(
         name=text_of(table.node("name")),
         form=form,
@@ -56,7 +60,10 @@ def _check_size(table: Table, form: str, reader: Reader) -> None:
     wanted = FORMS[form]
     for key in SIZES:
         if key != wanted and key in table.entries:
-            reader.fault(table.entries[key].key.place, f"a {form} has no '{key}'; expected '{wanted}'. Correct the form or the key.")
+            reader.fault(
+                table.entries[key].key.place,
+                f"a {form} has no '{key}'; expected '{wanted}'. Correct the form or the key.",
+            )
     if wanted not in table.entries:
         reader.fault(table, f"a {form} needs '{wanted}'; add '{wanted}: {SPECIMEN[wanted].example}' or the like.")
 
@@ -66,5 +73,5 @@ def _check_names(listing: Listing, reader: Reader) -> None:
     for table in listing.items:
         node = table.entries["name"].node
         if (name := text_of(node)) in seen:
-            reader.fault(node, f"a specimen '{name}' stands already in line {seen[name]}; give each its own name.")
+            reader.fault(node, f"a specimen {shown(name)} stands already in line {seen[name]}; give each its own name.")
         seen.setdefault(name, node.place.line)

@@ -20,11 +20,11 @@ from sheetgen.records.lattices import (
 )
 from sheetgen.records.measures import STRUCTURE
 from sheetgen.records.model import Crystal, Site, Value
+from sheetgen.records.nodes import Listing, Node, Scalar, Table
 from sheetgen.records.notation import read_number
 from sheetgen.records.spelling import british, written_key
 from sheetgen.records.symmetry import cell_shape, cell_system, expanded, find_space_group, group_lattice_name
-from sheetgen.records.trees import Listing, Node, Scalar, Table
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 from sheetgen.records.values import Reader
 
 ANGLES = ("alpha", "beta", "gamma")
@@ -50,7 +50,10 @@ def read_structure(
 
         for key, entry in table.entries.items():
             if key != "cif":
-                reader.fault(entry.key.place, f"'{entry.key.text}' stands beside 'cif', which says everything; keep one of them.")
+                reader.fault(
+                    entry.key.place,
+                    f"{shown(entry.key.text)} stands beside 'cif', which says everything; keep one of them.",
+                )
         crystal = read_cif(table.entries["cif"].node, reader, folder)
         return crystal, constants_of(crystal) if crystal else {}
     cell = _cell(table, reader)
@@ -88,7 +91,10 @@ def sound(crystal: Crystal, place: Place, reader: Reader) -> bool:
     """Whether angles can meet and atoms have room, else with a fault logged."""
     _, angles = lengths_and_angles(crystal)
     if not angles_close(*angles):
-        reader.fault(place, "the angles alpha, beta and gamma cannot meet in a corner; each must be less than the sum of the others, and their sum less than 360°.")
+        reader.fault(
+            place,
+            "the angles alpha, beta and gamma cannot meet in a corner; each must be less than the sum of the others, and their sum less than 360°.",
+        )
         return False
     if clash := overlapping(crystal):
         one, other = clash
@@ -111,7 +117,10 @@ def _cell(table: Table, reader: Reader) -> Cell | None:
     if group is not None:
         return _group_cell(group, lattice_word, named, table, reader)
     if lattice_word is None:
-        reader.fault(table, "structure has no lattice; expected lattice, space group or cif. Add 'lattice: fcc' or the like.")
+        reader.fault(
+            table,
+            "structure has no lattice; expected lattice, space group or cif. Add 'lattice: fcc' or the like.",
+        )
         return None
     lattice = LATTICES[lattice_word]
     if lattice_word == "rhombohedral" and ("c" in table.entries or "c_over_a" in table.entries):
@@ -136,10 +145,18 @@ def _group_cell(node: Scalar, word: str | None, named: Node | None, table: Table
     system = cell_system(group)
     wanted = {"rhombohedral": ("rhombohedral", "hexagonal")}.get(word, (LATTICES[word].system,)) if word else (system,)
     if system not in wanted:
-        reader.fault(named, f"lattice '{word}' disagrees with the space group {group.hm}, which is {system}; correct one of them.")
+        reader.fault(
+            named,
+            f"lattice '{word}' disagrees with the space group {group.hm}, which is {system}; correct one of them.",
+        )
         return None
     shape = cell_shape(group)
-    return Cell(word or group_lattice_name(group), shape, Lattice(system, group.centring_type()), tuple(group.operations()))
+    return Cell(
+        word or group_lattice_name(group),
+        shape,
+        Lattice(system, group.centring_type()),
+        tuple(group.operations()),
+    )
 
 
 def _constants(table: Table, cell: Cell, reader: Reader) -> dict[str, Value] | None:
@@ -174,13 +191,26 @@ def _one_of(group: tuple[str, ...], given: Mapping[str, object], table: Table, c
         reader.fault(given[found[-1]].key.place, f"both {names.replace(' or ', ' and ')} are given; keep one of them.")
     else:
         example = STRUCTURE[group[0]].example
-        reader.fault(table, f"a {cell.name} lattice needs {names}; add '{written_key(group[0])}: {example}' or the like.")
+        reader.fault(
+            table,
+            f"a {cell.name} lattice needs {names}; add '{written_key(group[0])}: {example}' or the like.",
+        )
     return False
 
 
 def _ideal_ratio(place: Place) -> Value:
     return Value(
-        IDEAL_RATIO, None, "1", IDEAL_RATIO, None, None, (), False, "ideal ratio of close-packed spheres", "√(8/3)", place
+        IDEAL_RATIO,
+        None,
+        "1",
+        IDEAL_RATIO,
+        None,
+        None,
+        (),
+        False,
+        "ideal ratio of close-packed spheres",
+        "√(8/3)",
+        place,
     )
 
 
@@ -227,7 +257,7 @@ def _listed_basis(atoms: Listing, reader: Reader) -> list[Site]:
 def _atom(table: Table, reader: Reader) -> Site | None:
     element = table.entries["element"].node
     if element.text not in elements():
-        reader.fault(element, f"'{element.text}' is no element; expected a symbol such as Ti.")
+        reader.fault(element, f"{shown(element.text)} is no element; expected a symbol such as Ti.")
         return None
     fractions = [_fraction(node, "position", reader) for node in table.entries["position"].node.items]
     occupied = table.node("occupancy")
@@ -235,7 +265,7 @@ def _atom(table: Table, reader: Reader) -> Site | None:
     if None in fractions or occupancy is None:
         return None
     if not 0 < occupancy <= 1:
-        reader.fault(occupied, f"occupancy: '{occupied.text}' is out of range; expected above 0 and at most 1.")
+        reader.fault(occupied, f"occupancy: {shown(occupied.text)} is out of range; expected above 0 and at most 1.")
         return None
     return Site(element.text, tuple(map(snapped, fractions)), occupancy)
 
@@ -249,8 +279,8 @@ def _fraction(node: Scalar, name: str, reader: Reader) -> float | None:
         return int(ratio[1]) / int(ratio[2])
     try:
         number = read_number(node.text)
-        if number.rest or abs(number.value) > 10:
-            raise UnreadableError(f"'{node.text}' is no fraction of a cell edge; expected such as 0.25 or 1/4")
+        if number.unit or abs(number.value) > 10:
+            raise UnreadableError(f"{shown(node.text)} is no fraction of a cell edge; expected such as 0.25 or 1/4")
     except UnreadableError as error:
         reader.fault(node, f"{name}: {error}.")
         return None
@@ -268,4 +298,7 @@ def check_content(
     if counts.keys() == composition.keys() and max(units) - min(units) <= OCCUPANCY_TOLERANCE * max(units):
         return
     content = " ".join(f"{element}{count:.4g}" for element, count in counts.items())
-    reader.fault(place, f"formula '{formula}' disagrees with the content of the cell, {content}; correct the formula, the lattice or the atoms.")
+    reader.fault(
+        place,
+        f"formula {shown(formula)} disagrees with the content of the cell, {content}; correct the formula, the lattice or the atoms.",
+    )

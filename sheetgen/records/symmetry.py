@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 from sheetgen.records.cells import MAXIMUM_SITES, merged_sites, snapped
 from sheetgen.records.lattices import SHAPES, CellShape, lattice_name
 from sheetgen.records.model import Site
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.unreadable import UnreadableError, shown
 
 if TYPE_CHECKING:
     import gemmi
@@ -30,7 +30,7 @@ def find_space_group(text: str, rhombohedral_axes: bool = False) -> gemmi.SpaceG
         found = gemmi.find_spacegroup_by_ops(gemmi.symops_from_hall(symbol)) if _hall(symbol) else None
     if found is None:
         raise UnreadableError(
-            f"'{text}' is no space group; expected a symbol such as 'Fm-3m' or a number from 1 to 230"
+            f"{shown(text)} is no space group; expected a symbol such as 'Fm-3m' or a number from 1 to 230"
         )
     return found
 

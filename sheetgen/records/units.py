@@ -12,8 +12,8 @@ from functools import cache, lru_cache
 from typing import TYPE_CHECKING, NamedTuple
 
 from sheetgen.faults import did_you_mean
-from sheetgen.records.notation import ascii_form
-from sheetgen.records.unreadable import UnreadableError
+from sheetgen.records.notation import CHARACTERS, SUPERSCRIPTS
+from sheetgen.records.unreadable import UnreadableError, shown
 
 if TYPE_CHECKING:
     import pint
@@ -67,9 +67,9 @@ def read_unit(text: str) -> Unit:
     per_square = _PER_SQUARE.search(plain)
     unit = _Expression(plain[: per_square.start()] if per_square else plain, text).read()
     if per_square and unit.dimension != read_unit("ohm").dimension:
-        raise UnreadableError(f"'{text}' is per square, which only a sheet resistance is; expected such as 'Ω/sq'")
+        raise UnreadableError(f"{shown(text)} is per square, which only a sheet resistance is; expected such as 'Ω/sq'")
     if not (math.isfinite(unit.factor) and unit.factor > 0):
-        raise UnreadableError(f"the unit '{text}' is beyond what a number can hold; check its exponents")
+        raise UnreadableError(f"the unit {shown(text)} is beyond what a number can hold; check its exponents")
     return unit
 
 
@@ -77,6 +77,7 @@ _SYMBOLS = [
     ("\u00b5", "u"), ("\u03bc", "u"), ("°C", "degC"), ("℃", "degC"), ("°F", "degF"), ("°", "deg"),
     ("Å", "angstrom"), ("Å", "angstrom"), ("%", "percent"), ("‰", "permille"),
 ]  # fmt: skip
+_RAISED = re.compile("[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+")
 _OHM = re.compile(r"[\u03a9\u2126](?P<next>[A-Za-z])?")
 _PER_SQUARE = re.compile(r"\s*(?:/|\bper\b)\s*(?:sq|square|□|◻|\(sq\))$")
 _PER = re.compile(r"\s*\bper\b\s*")
@@ -84,7 +85,8 @@ _BARE_POWER = re.compile(r"(?<=[A-Za-z])(?=[+-]?\d)")
 
 
 def _ascii(text: str) -> str:
-    plain = ascii_form(text)
+    """The unit in the ASCII that the grammar reads."""
+    plain = _RAISED.sub(lambda power: "^" + power[0].translate(SUPERSCRIPTS), text.translate(CHARACTERS).strip())
     for symbol, name in _SYMBOLS:
         plain = plain.replace(symbol, name)
     plain = _OHM.sub(lambda ohm: f"ohm {ohm['next']}" if ohm["next"] else "ohm", plain)
@@ -114,8 +116,8 @@ class _Expression:
 
     def _complaint(self, rest: str) -> str:
         if rest[0].isdigit():
-            return f"the unit '{self.written}' holds the number '{rest}'; expected one number, then its unit"
-        return f"the unit '{self.written}' cannot be read at '{rest}'; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
+            return f"the unit {shown(self.written)} holds the number {shown(rest)}; expected one number, then its unit"
+        return f"the unit {shown(self.written)} cannot be read at {shown(rest)}; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
 
     def read(self) -> Unit:
         if not self.tokens:
@@ -153,7 +155,9 @@ class _Expression:
         self.position += 1
         exponent = int(following.strip("^() "))
         if abs(exponent) > MAXIMUM_EXPONENT:
-            raise UnreadableError(f"the unit '{self.written}' has the exponent {exponent}; expected at most {MAXIMUM_EXPONENT}")
+            raise UnreadableError(
+                f"the unit {shown(self.written)} has the exponent {exponent}; expected at most {MAXIMUM_EXPONENT}"
+            )
         return _scaled(1.0, factor, exponent), {base: power * exponent for base, power in powers.items()}
 
     def _atom(self) -> tuple[float, dict[str, float]]:
@@ -162,15 +166,15 @@ class _Expression:
         if token == "(":
             inside = self._product()
             if self._next() != ")":
-                raise UnreadableError(f"the unit '{self.written}' leaves a bracket open; close it")
+                raise UnreadableError(f"the unit {shown(self.written)} leaves a bracket open; close it")
             self.position += 1
             return inside
         if token == "1":
             return 1.0, {}
         if token is None or not (token[0].isalpha() or token[0] == "_"):
-            found = f"at '{token}'" if token else "at its end"
+            found = f"at {shown(token)}" if token else "at its end"
             raise UnreadableError(
-                f"the unit '{self.written}' cannot be read {found}; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
+                f"the unit {shown(self.written)} cannot be read {found}; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
             )
         unit = _named(token, self.written)
         return unit.factor, dict(unit.dimension) | {"radian": unit.angle}
@@ -196,7 +200,7 @@ def _named(name: str, written: str) -> Unit:
     """One unit name with its prefix, by the units library."""
     import pint
 
-    unknown = UnreadableError(f"'{name}' in '{written}' is no unit known here.{did_you_mean(name, _COMMON)}")
+    unknown = UnreadableError(f"{shown(name)} in {shown(written)} is no unit known here.{did_you_mean(name, _COMMON)}")
     try:
         one = _registry().Quantity(1.0, name).to_base_units()
         zero = _registry().Quantity(0.0, name).to_base_units()

@@ -9,10 +9,10 @@ from dataclasses import dataclass, field, replace
 from sheetgen.faults import FaultLog, Place, did_you_mean
 from sheetgen.records.measures import ANGLE, TEMPERATURE, Measure
 from sheetgen.records.model import Source, Value
+from sheetgen.records.nodes import Listing, Node, Scalar, Table
 from sheetgen.records.notation import Number, read_number
-from sheetgen.records.trees import Listing, Node, Scalar, Table
-from sheetgen.records.unreadable import UnreadableError
 from sheetgen.records.units import Unit, read_unit
+from sheetgen.records.unreadable import UnreadableError, sentence, shown
 
 # Angles and temperatures of the record are near these, so that the powers of ten of a slip still print shortly.
 _SHORT = "{:.6g}"
@@ -52,7 +52,7 @@ class Reader:
         try:
             return _value(node, measure, name, origin)
         except UnreadableError as error:
-            self.fault(node, _sentence(f"{name}: {error}"))
+            self.fault(node, sentence(f"{name}: {error}"))
             return None
 
     def values(self, node: Node, measure: Measure, name: str) -> list[Value]:
@@ -102,7 +102,7 @@ def _value(node: Scalar, measure: Measure, name: str, origin: Origin) -> Value:
     unit_text, unit = _unit_of(number, measure, name, node.text)
     si = number.value * unit.factor + unit.offset
     if not math.isfinite(si):
-        raise UnreadableError(f"'{node.text}' is beyond what a number can hold; check the exponent")
+        raise UnreadableError(f"{shown(node.text)} is beyond what a number can hold; check the exponent")
     _check_range(si, unit_text, unit, measure, node.text)
     spread = number.standard_uncertainty
     return Value(
@@ -123,32 +123,17 @@ def _value(node: Scalar, measure: Measure, name: str, origin: Origin) -> Value:
 def _unit_of(number: Number, measure: Measure, name: str, text: str) -> tuple[str, Unit]:
     """The unit as written and what it means; a bare number is a pure number, and for an angle counts degrees."""
     expected = f"expected {measure.kind} such as '{measure.example}'"
-    if not number.rest:
+    if not number.unit:
         if measure is ANGLE:
             return "deg", read_unit("deg")
         if not measure.dimensionless:
-            raise UnreadableError(f"'{text}' has no unit; {expected}. Add the unit")
+            raise UnreadableError(f"{shown(text)} has no unit; {expected}. Add the unit")
         return "1", read_unit("1")
-    unit = read_unit(number.rest)
+    unit = read_unit(number.unit)
     wanted = read_unit(measure.unit)
     if unit.dimension != wanted.dimension or unit.angle != wanted.angle:
-        raise UnreadableError(f"given in '{_unit_as_written(text, number)}'; {expected}.{_mend(number.rest, unit, wanted)}")
-    return _unit_as_written(text, number), unit
-
-
-def _unit_as_written(text: str, number: Number) -> str:
-    """The unit in the characters of the record where they can be found there, else in ASCII."""
-    for start in range(len(text)):
-        tail = text[start:].strip()
-        if tail and _ascii(tail) == number.rest:
-            return tail
-    return number.rest
-
-
-def _ascii(text: str) -> str:
-    from sheetgen.records.notation import ascii_form
-
-    return ascii_form(text)
+        raise UnreadableError(f"given in {shown(number.unit)}; {expected}.{_mend(number.unit, unit, wanted)}")
+    return number.unit, unit
 
 
 _LACKING = {"m": "length", "m^2": "area", "m^3": "volume", "K": "temperature", "K^2": "squared temperature",
@@ -186,7 +171,9 @@ def _check_range(si: float, unit_text: str, unit: Unit, measure: Measure, text: 
     low, high = (_bound(bound, unit_text, unit) for bound in (measure.low, measure.high))
     below = "below" if measure.high_excluded else "to"
     limits = f"{low} to {high}" if below == "to" else f"at least {low} and below {high}"
-    raise UnreadableError(f"'{text}' is out of the physical range of {measure.kind}; expected {limits}. Check the number and its unit")
+    raise UnreadableError(
+        f"{shown(text)} is out of the physical range of {measure.kind}; expected {limits}. Check the number and its unit"
+    )
 
 
 def _bound(si: float, unit_text: str, unit: Unit) -> str:
@@ -196,10 +183,6 @@ def _bound(si: float, unit_text: str, unit: Unit) -> str:
 
 def _unknown_source(key: str, sources: Mapping[str, Source]) -> str:
     return (
-        f"the source '{key}' is not in sources.bib; expected one of its keys. Add an entry '{key}' there, or correct"
+        f"the source {shown(key)} is not in sources.bib; expected one of its keys. Add an entry {shown(key)} there, or correct"
         f" the key.{did_you_mean(key, sources)}"
     )
-
-
-def _sentence(text: str) -> str:
-    return text if text.endswith((".", "?")) else f"{text}."
