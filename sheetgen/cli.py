@@ -73,14 +73,15 @@ def _version(context: click.Context, _option: click.Option, wanted: bool) -> Non
         context.exit()
 
 
-def _folder_of_records(_context: click.Context, _parameter: click.Parameter, folder: Path) -> Path:
+def _standing(folder: Path) -> Path:
+    """The folder itself, where it stands; else a line that guesses which one was meant."""
     if folder.is_dir():
         return folder
     if folder.exists():
         raise WrongWordError(f"{folder} is a file; expected the folder that holds it.")
     beside = folder.parent.iterdir() if folder.parent.is_dir() else ()
     guess = did_you_mean(folder.name, [entry.name for entry in beside if entry.is_dir()])
-    raise WrongWordError(f"There is no folder {folder}; expected the folder of records.{guess}")
+    raise WrongWordError(f"There is no folder {folder}.{guess}")
 
 
 materials = click.argument(
@@ -89,7 +90,6 @@ materials = click.argument(
     said="the folder of records: handbook.yaml, sources.bib, a YAML file a material [default: materials]",
     type=click.Path(path_type=Path),
     default=MATERIALS,
-    callback=_folder_of_records,
 )
 as_json = click.option("--json", "as_json", is_flag=True, help="Print the result as JSON.")
 with_traceback = click.option(
@@ -130,7 +130,7 @@ def press_command(materials: Path, into: Path, as_json: bool) -> int:
 
     try:
         with ProgressLine() as progress:
-            pressed = press(materials, into, progress)
+            pressed = press(_standing(materials), into, progress)
     except FaultsError as error:
         return _at_fault(error.faults, as_json, f"Nothing was published; {into} stands as it stood.")
     except FolderRefusedError as error:
@@ -160,18 +160,26 @@ def press_command(materials: Path, into: Path, as_json: bool) -> int:
     return DONE
 
 
-@commands.command("proof", cls=Command, examples=["sheetgen proof materials"])
+@commands.command("proof", cls=Command, examples=["sheetgen proof materials", "sheetgen proof --site site"])
 @materials
+@click.option(
+    "--site",
+    metavar="SITE",
+    type=click.Path(path_type=Path),
+    help="Leave the records alone, and hold a published folder against its manifest.",
+)
 @as_json
 @with_traceback
-def proof_command(materials: Path, as_json: bool) -> int:
+def proof_command(materials: Path, site: Path | None, as_json: bool) -> int:
     """Read and derive everything, list what is at fault and what to know, publish nothing."""
+    if site is not None:
+        return _proof_of_site(site, as_json)
     from sheetgen.handbook import Handbook
 
     try:
         with ProgressLine() as progress:
             progress("reading records", 0, 0)
-            handbook = Handbook.load(materials)
+            handbook = Handbook.load(_standing(materials))
     except FaultsError as error:
         return _at_fault(error.faults, as_json)
     if as_json:
@@ -197,7 +205,6 @@ def proof_command(materials: Path, as_json: bool) -> int:
     metavar="FOLDER",
     type=click.Path(path_type=Path),
     default=MATERIALS,
-    callback=_folder_of_records,
     help="The folder of records [default: materials].",
 )
 @as_json
@@ -208,7 +215,7 @@ def quote_command(material: str, quantity: str, at: float | None, materials: Pat
     from sheetgen.quote import NotDerivedError, NotFoundError, quote
 
     try:
-        quoted = quote(Handbook.load(materials), material, quantity, at)
+        quoted = quote(Handbook.load(_standing(materials)), material, quantity, at)
     except FaultsError as error:
         return _at_fault(error.faults, as_json)
     except NotFoundError as error:
@@ -219,6 +226,24 @@ def quote_command(material: str, quantity: str, at: float | None, materials: Pat
         _print_json(quoted.as_json())
     else:
         _list(quoted.lines(), err=False)
+    return DONE
+
+
+def _proof_of_site(site: Path, as_json: bool) -> int:
+    from sheetgen.press import FolderRefusedError, deviations
+
+    try:
+        found = deviations(_standing(site))
+    except FolderRefusedError as error:
+        raise WrongWordError(str(error)) from error
+    faults = [fault for fault in found if fault.severity == "fault"]
+    _list(fault for fault in found if fault.severity == "remark")
+    if faults:
+        return _at_fault(faults, as_json)
+    if as_json:
+        _print_json({"faults": [], "remarks": [_fault_json(remark) for remark in found]})
+    else:
+        click.echo(f"{site}: every file is as it was published.")
     return DONE
 
 

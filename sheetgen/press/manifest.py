@@ -10,6 +10,7 @@ from dataclasses import dataclass, field
 from pathlib import Path
 
 from sheetgen import __version__
+from sheetgen.faults import Fault, FaultLog, Place
 
 NAME = "manifest.json"
 INPUT_SUFFIXES = {".bib", ".cif", ".py", ".yaml", ".yml"}
@@ -74,6 +75,24 @@ def standing_manifest(site: Path) -> Manifest:
         f"{path} is not the manifest of a press, so {site} may be someone's work. "
         "Move the folder away, or choose another with --into."
     )
+
+
+def deviations(site: Path) -> list[Fault]:
+    """Where a published folder is not what its manifest says; a file that a person put there is a remark.
+
+    Raises FolderRefusedError for a folder without a manifest of ours.
+    """
+    manifest, log = standing_manifest(site), FaultLog()
+    found = set(paths_in(site)) - {NAME}
+    for path in sorted(found | set(manifest.files)):
+        place = Place(str(site / path))
+        if path not in found:
+            log.fault(place, "is missing. Press the handbook again.")
+        elif path not in manifest.files:
+            log.remark(place, "was not made by a press.")
+        elif digest((site / path).read_bytes()) != manifest.files[path]:
+            log.fault(place, "is not what was published. Press the handbook again.")
+    return list(log)
 
 
 def paths_in(folder: Path) -> Iterator[str]:

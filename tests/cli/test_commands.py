@@ -80,7 +80,7 @@ def test_version_names_the_constants():
         (["press", "--intoo", "x"],
          "No such option '--intoo'. Did you mean '--into'? As in: sheetgen press materials --into site"),
         (["quote", "copper"], "Missing argument 'QUANTITY'. As in: sheetgen quote copper fermi_energy"),
-        (["proof", "recordz"], "There is no folder recordz; expected the folder of records. Did you mean 'records'?"),
+        (["proof", "recordz"], "There is no folder recordz. Did you mean 'records'?"),
         (["proof", "records/copper.yaml"], "records/copper.yaml is a file; expected the folder that holds it."),
         (["quote", "coper", "fermi_energy", "--materials", "records"],
          "The handbook has no material 'coper'. Did you mean 'copper'?"),
@@ -153,6 +153,27 @@ def test_proof_publishes_nothing(small_handbook):
 def test_proof_as_json(small_handbook):
     said = json.loads(sheetgen("proof", "records", "--json", folder=small_handbook.parent).stdout)
     assert (said["sheets"], said["faults"]) == (2, [])
+
+
+def test_proof_of_a_published_site(small_handbook):
+    folder = small_handbook.parent
+    sheetgen("press", "records", folder=folder)
+    ends(sheetgen("proof", "--site", "site", folder=folder), 0, "site: every file is as it was published.\n")
+    (folder / "site" / "index.html").write_text("improved")
+    (folder / "site" / "sources.html").unlink()
+    (folder / "site" / "CNAME").write_text("two-metals.example")
+    ends(sheetgen("proof", "--site", "site", folder=folder), 1, "", (
+        "site/CNAME: remark: was not made by a press.\n"
+        "site/index.html: is not what was published. Press the handbook again.\n"
+        "site/sources.html: is missing. Press the handbook again.\n"
+        "2 faults.\n"
+    ))  # fmt: skip
+
+
+def test_proof_of_a_folder_that_was_never_published(small_handbook):
+    run = sheetgen("proof", "--site", "records", folder=small_handbook.parent)
+    assert (run.returncode, run.stdout) == (2, "")
+    assert run.stderr.startswith("sheetgen: records holds files and no manifest.json")
 
 
 def test_quote_as_json_is_the_entry_of_the_data_file(small_handbook):
