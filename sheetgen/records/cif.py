@@ -1,4 +1,4 @@
-"""Structures from a CIF beside the record: cell with uncertainties, symmetry and sites, by the crystallographic library."""
+"""Structures from a CIF beside the record, by the crystallographic library: cell, symmetry and sites."""
 
 from __future__ import annotations
 
@@ -15,9 +15,10 @@ from sheetgen.records.measures import STRUCTURE
 from sheetgen.records.model import Crystal, Site, Value
 from sheetgen.records.nodes import Scalar
 from sheetgen.records.notation import read_number
-from sheetgen.records.structure import ANGLES, build_crystal, sound
+from sheetgen.records.sites import bare_fraction
+from sheetgen.records.structure import ANGLES, build_crystal, check_room
 from sheetgen.records.symmetry import cell_shape, expanded, find_space_group, group_lattice_name
-from sheetgen.records.unreadable import UnreadableError, shown
+from sheetgen.records.unreadable import UnreadableError, sentence, shown
 from sheetgen.records.values import Origin, Reader
 
 if TYPE_CHECKING:
@@ -50,7 +51,9 @@ _GROUPS = (
     "_symmetry_Int_Tables_number",
 )
 _TEMPERATURES = ("_cell_measurement_temperature", "_diffrn_ambient_temperature")
-_SYMBOL = re.compile(r"[A-Za-z]{1,2}")
+# Degrees, and a share of the length: what rounding of a printed cell may do to a tie.
+_ANGLE_TOLERANCE = 0.01
+_LENGTH_TOLERANCE = 1e-4
 
 
 def read_cif(node: Scalar, reader: Reader, folder: Path) -> Crystal | None:
@@ -89,7 +92,7 @@ def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
     try:
         return _Block(blocks[0], path, reader).crystal()
     except UnreadableError as error:
-        reader.fault(Place(str(path)), f"{error}.")
+        reader.fault(Place(str(path)), sentence(str(error)))
         return None
 
 
@@ -102,27 +105,25 @@ def _syntax(message: str, path: Path) -> tuple[Place, str]:
 
 
 class _Block:
-    """One data block with a cell."""
+    """One data block with a cell. Every method raises UnreadableError for what it cannot read."""
 
     def __init__(self, block: gemmi.cif.Block, path: Path, reader: Reader):
         self.block, self.path, self.reader = block, path, reader
 
     def crystal(self) -> Crystal | None:
+        """The crystal, or None where the reader has logged a constant as faulty."""
         shape, name, operations = self._symmetry()
         constants = {key: self._constant(key, tag) for key, tag in _CONSTANTS.items()}
         if None in constants.values():
             return None
         self._check_ties(constants, shape)
-        atoms = self._atoms()
         free = {key: constants[key] for key in constants if key in shape.read}
-        crystal = build_crystal(name, shape, free, expanded(atoms, operations))
-        return crystal if sound(crystal, Place(str(self.path)), self.reader) else None
-
-    def _place(self, tag: str) -> Place:
-        item = self.block.find_pair_item(tag)
-        return Place(str(self.path), item.line_number if item else 0)
+        crystal = build_crystal(name, shape, free, expanded(self._atoms(), operations))
+        check_room(crystal)
+        return crystal
 
     def _text(self, tag: str) -> str:
+        """The value of a tag without quotes, empty where it is absent, unknown or inapplicable."""
         from gemmi import cif
 
         raw = self.block.find_value(tag)
@@ -131,13 +132,15 @@ class _Block:
     def _constant(self, key: str, tag: str) -> Value | None:
         written = self._text(tag)
         if not written:
-            raise UnreadableError(f"'{tag}' has no value; a cell needs all its lengths and angles")
-        unit = "°" if key in ANGLES else " Å"
-        node = Scalar(written + unit, True, self._place(tag))
-        measure = STRUCTURE["a" if key in "abc" else key]
-        return self.reader.value(node, measure, tag, Origin(self._temperature(), note=f"from {self.path.name}"))
+            raise UnreadableError(f"'{tag}' has no value; expected all lengths and angles of the cell")
+        item = self.block.find_pair_item(tag)
+        place = Place(str(self.path), item.line_number if item else 0)
+        node = Scalar(written + ("°" if key in ANGLES else " Å"), True, place)
+        origin = Origin(self._temperature(), note=f"from {self.path.name}")
+        return self.reader.value(node, STRUCTURE[key], tag, origin)
 
     def _temperature(self) -> float | None:
+        """The temperature of the measurement in K; an odd one is as good as none."""
         for tag in _TEMPERATURES:
             if written := self._text(tag):
                 kelvins = read_number(written).value
@@ -145,14 +148,14 @@ class _Block:
         return None
 
     def _symmetry(self) -> tuple[CellShape, str, list[gemmi.Op]]:
-        """Cell shape, lattice name and operations: listed ones first, else those of the space group."""
+        """Cell shape, lattice name and operations: those listed first, else those of the space group."""
         import gemmi
 
         listed = next((column for tag in _OPERATIONS if (column := self.block.find_values(tag))), None)
         if listed:
             if len(listed) > MAXIMUM_OPERATIONS:
                 raise UnreadableError(f"{len(listed)} symmetry operations; expected at most {MAXIMUM_OPERATIONS}")
-            operations = [self._operation(raw) for raw in listed]
+            operations = [_operation(raw) for raw in listed]
             group = gemmi.find_spacegroup_by_ops(gemmi.GroupOps(operations))
         else:
             group = self._group()
@@ -161,71 +164,68 @@ class _Block:
             return SHAPES["triclinic"], "triclinic", operations
         return cell_shape(group), group_lattice_name(group), operations
 
-    def _operation(self, raw: str) -> gemmi.Op:
-        import gemmi
-        from gemmi import cif
-
-        text = cif.as_string(raw)
-        try:
-            return gemmi.Op(text)
-        except (RuntimeError, ValueError):
-            raise UnreadableError(f"{shown(text)} is no symmetry operation; expected such as '-x, y+1/2, -z'") from None
-
     def _group(self) -> gemmi.SpaceGroup:
-        for tag in _GROUPS:
-            if written := self._text(tag):
-                return find_space_group(written)
-        raise UnreadableError(
-            "no symmetry is stated; expected a space group or its operations. Add the one or the other"
-        )
+        written = next((text for tag in _GROUPS if (text := self._text(tag))), None)
+        if written is None:
+            raise UnreadableError(
+                "no symmetry is stated; expected a space group or its operations. Add the one or the other"
+            )
+        # A rhombohedral group is on rhombohedral axes where the cell does not have the 120° of hexagonal ones.
+        return find_space_group(written, rhombohedral_axes=not self._text("_cell_angle_gamma").startswith("120"))
 
     def _check_ties(self, constants: dict[str, Value], shape: CellShape) -> None:
-        """A fault where the cell contradicts its own symmetry."""
-        for key, fixed in zip(ANGLES, shape.angles, strict=True):
-            if fixed is not None and abs(constants[key].value - fixed) > 0.01:
-                raise UnreadableError(
-                    f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry fixes {fixed:g}°; correct one of them"
-                )
+        """The cell must not contradict its own symmetry."""
+        fixed = {key: angle for key, angle in zip(ANGLES, shape.angles, strict=True) if angle is not None}
+        for key, angle in fixed.items():
+            if abs(constants[key].value - angle) > _ANGLE_TOLERANCE:
+                found = f"{_CONSTANTS[key]} is {constants[key].text}"
+                raise UnreadableError(f"{found}, but the symmetry fixes {angle:g}°; correct one of them")
         for key in ("b", "c"):
-            tied = key not in shape.read
-            if tied and abs(constants[key].si / constants["a"].si - 1) > 1e-4:
-                raise UnreadableError(
-                    f"{_CONSTANTS[key]} is {constants[key].text}, but the symmetry makes it equal to a; correct one of them"
-                )
+            equal = abs(constants[key].si / constants["a"].si - 1) <= _LENGTH_TOLERANCE
+            if key not in shape.read and not equal:
+                found = f"{_CONSTANTS[key]} is {constants[key].text}"
+                raise UnreadableError(f"{found}, but the symmetry makes it equal to a; correct one of them")
 
     def _atoms(self) -> list[Site]:
-        tags = ["label", "?type_symbol", "fract_x", "fract_y", "fract_z", "?occupancy"]
-        table = self.block.find("_atom_site_", tags)
+        table = self.block.find("_atom_site_", ["label", "?type_symbol", "fract_x", "fract_y", "fract_z", "?occupancy"])
         if not 0 < len(table) <= MAXIMUM_ATOMS:
             raise UnreadableError(
-                f"{len(table)} atom sites with fractional coordinates; expected 1 to {MAXIMUM_ATOMS}. Add the loop of _atom_site_fract_x, y and z"
+                f"{len(table)} atom sites with fractional coordinates; expected 1 to {MAXIMUM_ATOMS}."
+                " Give the loop of _atom_site_fract_x, y and z"
             )
-        return [self._atom(row) for row in table]
-
-    def _atom(self, row: gemmi.cif.Table.Row) -> Site:
-        label = row.str(0)
-        symbol = row.str(1) if row.has(1) and row.str(1) not in "?." else label
-        found = _SYMBOL.match(symbol)
-        candidates = (found[0].capitalize(), found[0][0].upper()) if found else ()
-        element = next((candidate for candidate in candidates if candidate in elements()), None)
-        if element is None:
-            raise UnreadableError(f"the atom site {shown(label)} names no element; expected a type symbol such as Ti")
-        position = tuple(snapped(_fraction(row.str(index), label)) for index in (2, 3, 4))
-        occupancy = _fraction(row.str(5), label) if row.has(5) and row.str(5) not in "?." else 1.0
-        if not 0 < occupancy <= 1:
-            raise UnreadableError(
-                f"the atom site {shown(label)} has the occupancy {occupancy:g}; expected above 0 and at most 1"
-            )
-        return Site(element, position, occupancy)
+        return [_atom(row) for row in table]
 
 
-def _fraction(text: str, label: str) -> float:
+def _operation(raw: str) -> gemmi.Op:
+    import gemmi
+    from gemmi import cif
+
+    text = cif.as_string(raw)
     try:
-        number = read_number(text)
-    except UnreadableError:
-        number = None
-    if number is None or number.unit or abs(number.value) > 10:
-        raise UnreadableError(
-            f"the atom site {shown(label)} has {shown(text)} for a number; expected such as 0.25 or 0.2345(2)"
-        )
-    return number.value
+        return gemmi.Op(text)
+    except (RuntimeError, ValueError):
+        raise UnreadableError(f"{shown(text)} is no symmetry operation; expected such as '-x, y+1/2, -z'") from None
+
+
+def _atom(row: gemmi.cif.Table.Row) -> Site:
+    label = row.str(0)
+    where = f"the atom site {shown(label)}"
+    symbol = row.str(1) if row.has(1) and row.str(1) not in "?." else label
+    element = _element(symbol)
+    if element is None:
+        raise UnreadableError(f"{where} names no element; expected a type symbol such as Ti")
+    try:
+        position = tuple(snapped(bare_fraction(row.str(index))) for index in (2, 3, 4))
+        occupancy = bare_fraction(row.str(5)) if row.has(5) and row.str(5) not in "?." else 1.0
+    except UnreadableError as error:
+        raise UnreadableError(f"{where}: {error}") from None
+    if not 0 < occupancy <= 1:
+        raise UnreadableError(f"{where} has the occupancy {occupancy:g}; expected above 0 and at most 1")
+    return Site(element, position, occupancy)
+
+
+def _element(symbol: str) -> str | None:
+    """The element at the beginning of `Ti4+`, `TI` or `Cu1`."""
+    letters = re.match(r"[A-Za-z]{1,2}", symbol)
+    candidates = (letters[0].capitalize(), letters[0][0].upper()) if letters else ()
+    return next((candidate for candidate in candidates if candidate in elements()), None)

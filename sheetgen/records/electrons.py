@@ -68,11 +68,8 @@ def _valence(
         valence = _by_element(node, composition, reader)
         inputs |= {f"valence.{element}": value for element, value in valence.items()}
     elif len(composition) > 1:
-        first = next(iter(composition))
-        reader.fault(
-            node,
-            f"valence is one number for a compound; expected a mapping from each of {_listed(composition)} to its electrons, such as {{{first}: 1, …}}.",
-        )
+        expected = f"expected a mapping from each of {_listed(composition)} to its electrons"
+        reader.fault(node, f"valence is one number for a compound; {expected}, such as {{Ti: 4, N: -3}}.")
         return None
     else:
         value = reader.value(node, VALENCE, "valence")
@@ -90,11 +87,8 @@ def _valence(
 def _by_element(table: Table, composition: Mapping[str, float], reader: Reader) -> dict[str, Value]:
     for key, entry in table.entries.items():
         if key not in composition:
-            reader.fault(
-                entry.key.place,
-                f"valence names {shown(entry.key.text)}, which is not in the formula; expected {_listed(composition)}."
-                f"{did_you_mean(key, composition)}",
-            )
+            known = f"expected {_listed(composition)}.{did_you_mean(key, composition)}"
+            reader.fault(entry.key.place, f"valence names {shown(key)}, which is not in the formula; {known}")
     missing = [element for element in composition if element not in table.entries]
     if missing:
         reader.fault(

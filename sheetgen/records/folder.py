@@ -13,6 +13,7 @@ from sheetgen.records.record import read_record
 from sheetgen.records.sources import MAXIMUM_BYTES as MAXIMUM_BIB_BYTES
 from sheetgen.records.sources import read_sources
 from sheetgen.records.trees import read_tree
+from sheetgen.records.unreadable import shown
 from sheetgen.records.values import Reader
 
 SOURCES_NAME = "sources.bib"
@@ -76,7 +77,7 @@ def _imprint(folder: Path, names: list[str], log: FaultLog) -> Imprint:
         log.fault(Place(str(path)), f"the folder has no imprint; expected the file handbook.yaml. {mend}")
         return imprints.default_imprint(path)
     text = read_text(path, folder, log)
-    root = read_tree(text, str(path), log) if text is not None else None
+    root = read_tree(text, str(path), log, "title: Handbook of our materials") if text is not None else None
     return imprints.read_imprint(root, path, Reader(log)) if root else imprints.default_imprint(path)
 
 
@@ -96,21 +97,16 @@ def _slugs(folder: Path, names: list[str], log: FaultLog) -> list[str]:
             continue
         place = Place(str(folder / name))
         stem, suffix = name.rsplit(".", 1)
-        if stem.lower() in fit:
+        quoted = shown(name)
+        if other := fit.get(stem.lower()):
             log.fault(
-                place,
-                f"'{name}' and '{fit[stem.lower()]}' are one name on many disks and one address; rename one of them.",
+                place, f"{quoted} and {shown(other)} are one name on many disks and one address; rename one of them."
             )
         elif not _SLUG.fullmatch(stem) or len(stem) > _LONGEST_SLUG or suffix != suffix.lower():
-            log.fault(
-                place,
-                f"the file name '{name}' cannot be an address; expected lower-case letters, digits and hyphens, such as indium-tin-oxide.yaml. Rename it.",
-            )
+            expected = "expected lower-case letters, digits and hyphens, such as indium-tin-oxide.yaml"
+            log.fault(place, f"the file name {quoted} cannot be an address; {expected}. Rename it.")
         elif stem in _DEVICES:
-            log.fault(
-                place,
-                f"the file name '{name}' is a device on Windows; choose another, such as {stem}-1.yaml.",
-            )
+            log.fault(place, f"the file name {quoted} is a device on Windows; choose another, such as {stem}-1.yaml.")
         fit.setdefault(stem.lower(), name)
     return list(fit.values())
 

@@ -7,7 +7,7 @@ from pathlib import Path
 
 from sheetgen.faults import Place, did_you_mean
 from sheetgen.records.model import Imprint
-from sheetgen.records.nodes import Listing, Node, Scalar, Table
+from sheetgen.records.nodes import Listing, Node, Scalar, Table, found
 from sheetgen.records.spelling import written_key
 from sheetgen.records.units import read_unit
 from sheetgen.records.unreadable import UnreadableError, shown
@@ -26,6 +26,9 @@ _LONGEST_TEXT = 300
 _LANGUAGE = re.compile(r"[a-z]{2,3}(?:-[A-Za-z0-9]{2,8})*")
 _ADDRESS = re.compile(r"https?://[^\s\"<>\\^`{|}]+")
 _CONTACT = re.compile(r"[^\s@\"<>()]+@[^\s@\"<>()]+\.[A-Za-z0-9-]{2,}|https?://[^\s\"<>\\^`{|}]+")
+_MODULE = re.compile(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py")
+_NUMBER = re.compile(r"[\d.eE+-]{1,20}")
+_BARE = re.compile(r"\s*[+-]?[\d.]+\s*")
 _IDENTIFIER = re.compile(r"[a-z][a-z0-9_]{0,63}")
 
 
@@ -97,7 +100,7 @@ def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
     if not isinstance(node, Scalar):
         reader.fault(node, f"{name}: expected a temperature such as '293.15 K' or '20 °C'.")
         return None
-    if re.fullmatch(r"\s*[+-]?[\d.]+\s*", node.text):
+    if _BARE.fullmatch(node.text):
         node = Scalar(f"{node.text.strip()} K", node.plain, node.place)
     kelvins = reader.temperature(node, name)
     if kelvins is not None and kelvins <= 0:
@@ -115,8 +118,8 @@ def _temperatures(node: Node | None, reader: Reader) -> tuple[float, ...]:
             f"temperatures: expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C].",
         )
         return TEMPERATURES
-    found = [_temperature(item, "temperatures", reader) for item in node.items]
-    return tuple(kelvins for kelvins in found if kelvins is not None)
+    kelvins = [_temperature(item, "temperatures", reader) for item in node.items]
+    return tuple(value for value in kelvins if value is not None)
 
 
 def _ordered(temperatures: tuple[float, ...], reference: float) -> tuple[float, ...]:
@@ -128,7 +131,7 @@ def _paper(node: Node | None, reader: Reader) -> str:
     if node is None:
         return "A4"
     if (paper := PAPERS.get(text_of(node).lower())) is None:
-        reader.fault(node, f"paper: found {shown(text_of(node))}; expected A4 or letter.")
+        reader.fault(node, f"paper: found {found(node)}; expected A4 or letter.")
         return "A4"
     return paper
 
@@ -149,7 +152,7 @@ def _units(node: Node | None, reader: Reader) -> dict[str, str]:
                 raise UnreadableError("no unit stands here; expected such as 'eV'")
             read_unit(text)
         except UnreadableError as error:
-            reader.fault(entry.node, f"units: {error}.")
+            reader.unreadable(entry.node, f"unit of {written_key(key)}", error)
             continue
         units[key] = text
     return units
@@ -161,15 +164,11 @@ def _thresholds(node: Node | None, reader: Reader) -> dict[str, float | tuple[fl
         if key in THRESHOLDS:
             thresholds[key] = _threshold(entry.node, key, reader)
         elif not _IDENTIFIER.fullmatch(key):
-            reader.fault(
-                entry.key.place,
-                f"{shown(entry.key.text)} is no id of an assumption; expected such as degenerate_gas.",
-            )
+            message = f"{shown(entry.key.text)} is no id of an assumption; expected one such as degenerate_gas."
+            reader.fault(entry.key.place, message)
         elif not isinstance(entry.node, Listing) or len(entry.node.items) != 2:
-            reader.fault(
-                entry.node,
-                f"the bounds of {key} are two: expected [strained, broken] such as [0.1, 0.3], with null for one that does not exist.",
-            )
+            expected = "expected [strained, broken] such as [0.1, 0.3], null standing for a bound that does not exist"
+            reader.fault(entry.node, f"{key}: found {found(entry.node)}; {expected}.")
         else:
             thresholds[key] = tuple(_bound(item, key, reader) for item in entry.node.items)
     return {key: value for key, value in thresholds.items() if value is not None}
@@ -179,7 +178,7 @@ def _threshold(node: Node, key: str, reader: Reader) -> float | None:
     number = _number(node)
     low, high = {"agrees": (0, 1), "adjust": (1, 1000), "undecided": (0, 10)}[key]
     if number is None or not low < number <= high:
-        reader.fault(node, f"{key}: found {shown(text_of(node))}; expected a number above {low} and at most {high}.")
+        reader.fault(node, f"{key}: found {found(node)}; expected a number above {low} and at most {high}.")
         return None
     return number
 
@@ -188,14 +187,14 @@ def _bound(node: Node, key: str, reader: Reader) -> float | None:
     if text_of(node) in ("", "~", "null"):
         return None
     if (number := _number(node)) is None or number <= 0:
-        reader.fault(node, f"{key}: found {shown(text_of(node))}; expected a number above 0, or null.")
+        reader.fault(node, f"{key}: found {found(node)}; expected a number above 0, or null.")
         return None
     return number
 
 
 def _number(node: Node) -> float | None:
     try:
-        return float(text_of(node)) if re.fullmatch(r"[\d.eE+-]{1,20}", text_of(node)) else None
+        return float(text_of(node)) if _NUMBER.fullmatch(text_of(node)) else None
     except ValueError:
         return None
 
@@ -205,14 +204,9 @@ def _own_quantities(node: Node | None, folder: Path, reader: Reader) -> Path | N
     if node is None:
         return None
     name = text_of(node)
-    if (
-        not re.fullmatch(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py", name)
-        or not (folder / name).is_file()
-        or (folder / name).is_symlink()
-    ):
-        reader.fault(
-            node,
-            f"own quantities: {shown(name)} is no Python file beside handbook.yaml; expected a name such as quantities.py.",
-        )
-        return None
-    return folder / name
+    path = folder / name
+    if _MODULE.fullmatch(name) and path.is_file() and not path.is_symlink():
+        return path
+    expected = "expected a name such as quantities.py"
+    reader.fault(node, f"own quantities: found {found(node)}, no Python file beside handbook.yaml; {expected}.")
+    return None

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from fractions import Fraction as F
+from fractions import Fraction
 
-Point = tuple[F, F, F]
+Point = tuple[float, float, float]
 
 
 def _points(*texts: str) -> tuple[Point, ...]:
-    return tuple(tuple(F(number) for number in text.split()) for text in texts)
+    return tuple(tuple(float(Fraction(number)) for number in text.split()) for text in texts)
 
 
 CENTRINGS: dict[str, tuple[Point, ...]] = {
@@ -60,17 +60,23 @@ LATTICES: dict[str, Lattice] = {
 class CellShape:
     """Which constants of a cell are free, which are needed, and the angles (degrees) that the system fixes.
 
-    `either` lists groups of constants of which one and only one is given.
+    `either` lists groups of constants of which one and only one is given; `angles_tied` makes beta and gamma alpha.
     """
 
     needed: tuple[str, ...]
     either: tuple[tuple[str, ...], ...] = ()
     angles: tuple[float | None, float | None, float | None] = (90.0, 90.0, 90.0)
+    angles_tied: bool = False
+
+    @property
+    def groups(self) -> tuple[tuple[str, ...], ...]:
+        """Groups of constants, of each of which one and only one is given."""
+        return (*((key,) for key in self.needed), *self.either)
 
     @property
     def read(self) -> tuple[str, ...]:
         """Every constant that may be given."""
-        return (*self.needed, *(key for group in self.either for key in group))
+        return tuple(key for group in self.groups for key in group)
 
 
 SHAPES: dict[str, CellShape] = {
@@ -78,7 +84,7 @@ SHAPES: dict[str, CellShape] = {
     "tetragonal": CellShape(("a",), (("c", "c_over_a"),)),
     "hexagonal": CellShape(("a",), (("c", "c_over_a"),), (90.0, 90.0, 120.0)),
     "orthorhombic": CellShape(("a", "b"), (("c", "c_over_a"),)),
-    "rhombohedral": CellShape(("a", "alpha"), (), (None, None, None)),
+    "rhombohedral": CellShape(("a", "alpha"), (), (None, None, None), angles_tied=True),
     "monoclinic": CellShape(("a", "b", "beta"), (("c", "c_over_a"),), (90.0, None, 90.0)),
     "triclinic": CellShape(("a", "b", "alpha", "beta", "gamma"), (("c", "c_over_a"),), (None, None, None)),
 }

@@ -55,10 +55,8 @@ def _optical_point(table: Table, reader: Reader) -> OpticalPoint | None:
 def _remark_missing_temperature(values: Iterable[Value], name: str, reader: Reader) -> None:
     for value in values:
         if value.temperature is None:
-            reader.remark(
-                value.place,
-                f"{name} has no temperature; it counts as taken at the reference temperature. Add 'at: 293 K' or the like.",
-            )
+            counted = f"{name} has no temperature; it counts as taken at the reference temperature"
+            reader.remark(value.place, f"{counted}. Add 'at: 293 K' or the like.")
 
 
 def _check_dimension(table: Table, dimension: int, reader: Reader) -> None:
@@ -86,15 +84,11 @@ def check_residual(measured: dict[str, tuple[Value, ...]], reference: float, rea
     """A fault where a residual resistivity lies above the reference resistivity."""
     resistivities = measured.get("resistivity", ())
     index = reference_index(resistivities, reference)
-    if index is None:
-        return
-    for residual in measured.get("residual_resistivity", ()):
+    for residual in measured.get("residual_resistivity", ()) if index is not None else ():
         if residual.si > resistivities[index].si:
-            reader.fault(
-                residual.place,
-                f"residual resistivity: {shown(residual.text)} is above the reference resistivity '{resistivities[index].text}';"
-                " expected less. Check both numbers and their units.",
-            )
+            above = f"{shown(residual.text)} is above the reference resistivity {shown(resistivities[index].text)}"
+            mend = "expected less. Check both numbers and their units."
+            reader.fault(residual.place, f"residual resistivity: {above}; {mend}")
 
 
 def measured_inputs(measured: dict[str, tuple[Value, ...]], reference: float) -> dict[str, Value]:

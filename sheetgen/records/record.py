@@ -13,10 +13,11 @@ from sheetgen.records.measures import OPTICAL
 from sheetgen.records.model import Caution, Crystal, Electrons, Record, Review, Value
 from sheetgen.records.nodes import Listing, Scalar, Table
 from sheetgen.records.shape import has_record_shape
+from sheetgen.records.sites import check_content
 from sheetgen.records.specimens import read_specimens, specimen_inputs
-from sheetgen.records.structure import check_content, read_structure
+from sheetgen.records.structure import read_structure
 from sheetgen.records.trees import read_tree
-from sheetgen.records.unreadable import UnreadableError, shown
+from sheetgen.records.unreadable import UnreadableError, sentence, shown
 from sheetgen.records.values import Reader, text_of
 
 
@@ -35,7 +36,7 @@ def _record(root: Table, path: Path, reader: Reader, folder: Path, reference: fl
     try:
         composition = composition_of(formula.text.strip())
     except UnreadableError as error:
-        reader.fault(formula, f"{error}.")
+        reader.fault(formula, sentence(str(error)))
         return None
     crystal, constants = _structure(root, formula, composition, reader, folder)
     electrons, electron_values = _electrons(root, composition, reader)

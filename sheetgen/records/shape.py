@@ -80,22 +80,23 @@ def _one_of(options: list[str]) -> str:
 def _unknown_keys(table: Table, schema: dict, name: str) -> Iterator[tuple[Place, str]]:
     known = schema["properties"]
     patterns = [re.compile(pattern) for pattern in schema.get("patternProperties", ())]
+    where = "" if name == "the record" else f" of {name}"
     for key, entry in table.entries.items():
         if key in known or any(pattern.search(key) for pattern in patterns):
             continue
         expected = ", ".join(map(written_key, known))
-        where = "" if name == "the record" else f" of {name}"
-        mend = _elsewhere(key, known) or did_you_mean(key.replace("_", " ")[:60], map(written_key, known))
-        yield entry.key.place, f"unknown key {shown(entry.key.text)}{where}; expected one of {expected}.{mend}"
+        message = f"unknown key {shown(entry.key.text)}{where}; expected one of {expected}."
+        yield entry.key.place, message + _mend(key[:80], known)
 
 
-def _elsewhere(key: str, known: dict) -> str:
-    """Where a key belongs that is known in another section."""
+def _mend(key: str, known: dict) -> str:
+    """A closing sentence for an unknown key: a comma in a number, the section where it belongs, or a near word."""
+    if "value" in known and key[:1].isdigit():
+        return " A comma ends a value in braces: write a decimal point, or put the text in quotes."
     sections = canonical_schema()["properties"]
     if key in sections and "name" not in known:
         return f" '{written_key(key)}' belongs at the left margin, outside every section."
     for section, schema in sections.items():
-        properties = schema.get("items", schema).get("properties", {})
-        if key in properties and properties is not known and section != "cautions":
+        if key in schema.get("items", schema).get("properties", {}) and section != "cautions":
             return f" Put '{written_key(key)}' under '{written_key(section)}'."
-    return ""
+    return did_you_mean(key.replace("_", " "), map(written_key, known))

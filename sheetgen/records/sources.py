@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import replace
 from pathlib import Path
 from typing import NamedTuple
 
@@ -10,7 +11,7 @@ from sheetgen.faults import FaultLog, Place
 from sheetgen.records.files import place_of
 from sheetgen.records.model import Source
 from sheetgen.records.references import link_of, person_name, plain_text, reference
-from sheetgen.records.unreadable import UnreadableError, shown
+from sheetgen.records.unreadable import UnreadableError, sentence, shown
 
 MAXIMUM_BYTES = 4_000_000
 MAXIMUM_FIELD = 20_000
@@ -25,29 +26,32 @@ class _Entry(NamedTuple):
     kind: str
     key: str
     fields: list[tuple[str, str]]
+    broken: bool
     place: Place
     bibtex: str
 
 
 def read_sources(text: str, path: Path, log: FaultLog) -> dict[str, Source]:
-    """Every source by its key, in the order of the file; everything wrong is logged."""
+    """Every source by its key, in the order of the file; everything wrong is logged.
+
+    An entry at fault keeps its key, so that the records that cite it are not at fault, too.
+    """
     sources: dict[str, Source] = {}
     for entry in _entries(text, str(path), log):
-        if entry.key in sources:
-            first = sources[entry.key].place.line
-            log.fault(
-                entry.place,
-                f"the source {shown(entry.key)} stands a second time (first in line {first}); keep one of them.",
-            )
+        if first := sources.get(entry.key):
+            again = f"the source {shown(entry.key)} stands a second time (first in line {first.place.line})"
+            log.fault(entry.place, f"{again}; keep one of them.")
             continue
         try:
             sources[entry.key] = _source(entry)
         except UnreadableError as error:
-            log.fault(entry.place, f"the source {shown(entry.key)}: {error}.")
+            log.fault(entry.place, sentence(f"the source {shown(entry.key)}: {error}"))
+            sources[entry.key] = _bare_source(entry)
     return sources
 
 
 def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
+    """The entries of a bibliography; one with a syntax error has no fields, but a fault."""
     from pybtex.database.input.bibtex import LowLevelParser
     from pybtex.scanner import PybtexSyntaxError
 
@@ -59,24 +63,34 @@ def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
             if sum(map(len, self.current_value)) > MAXIMUM_FIELD:
                 raise PybtexSyntaxError(f"a field of more than {MAXIMUM_FIELD} characters", self)
 
+    broken: set[int] = set()
+
     def note(error: PybtexSyntaxError) -> None:
-        what = str(error).split(": ", 1)[-1]
-        log.fault(
-            Place(file, error.lineno),
-            f"not readable as BibTeX: {what}. Check the braces, quotes and commas of this entry and of the one before.",
+        broken.add(error.parser.command_start)
+        what = error.args[0] if error.error_type == "syntax error" else f"{error.error_type} {shown(error.args[0])}"
+        message = (
+            f"not readable as BibTeX: {what}. Check the braces, quotes and commas of this entry and the one before."
         )
+        log.fault(Place(file, error.lineno), message)
 
     parser = BoundedParser(text, handle_error=note)
     for kind, content in parser:
-        if kind.lower() in _NO_SOURCES:
+        start = parser.command_start
+        if kind.lower() in _NO_SOURCES or content[0] is None:
             continue
         key, fields = content
-        start = parser.command_start
-        joined = [(name.lower(), " ".join("".join(parts).split())) for name, parts in fields]
-        yield _Entry(kind.lower(), key, joined, place_of(text, start, file), text[start : parser.pos])
+        joined = [] if start in broken else _joined(fields)
+        yield _Entry(kind.lower(), key, joined, start in broken, place_of(text, start, file), text[start : parser.pos])
+
+
+def _joined(fields: list[tuple[str, list[str]]]) -> list[tuple[str, str]]:
+    """Field names in lower case, values in one line."""
+    return [(name.lower(), " ".join("".join(parts).split())) for name, parts in fields]
 
 
 def _source(entry: _Entry) -> Source:
+    if entry.broken:
+        return _bare_source(entry)
     names = [name for name, _ in entry.fields]
     if repeated := next((name for name in names if names.count(name) > 1), None):
         raise UnreadableError(f"the field {shown(repeated)} stands twice; keep one of them")
@@ -87,18 +101,31 @@ def _source(entry: _Entry) -> Source:
     if not {"title", "author", "editor", "note"} & fields.keys():
         raise UnreadableError("says neither title, author nor note; add what a reader needs to find it")
     authors = people.get("author") or people.get("editor") or ()
-    link = link_of(written)
-    return Source(
-        key=entry.key,
-        kind=entry.kind,
+    return replace(
+        _bare_source(entry),
         title=fields.get("title", ""),
         authors=authors,
         year=fields.get("year", ""),
         fields=fields,
         text=reference(authors, fields),
-        link=link,
-        bibtex=entry.bibtex,
+        link=link_of(written),
         note=fields.get("note", ""),
+    )
+
+
+def _bare_source(entry: _Entry) -> Source:
+    """What is known of an entry whose fields are not read."""
+    return Source(
+        key=entry.key,
+        kind=entry.kind,
+        title="",
+        authors=(),
+        year="",
+        fields={},
+        text="",
+        link=None,
+        bibtex=entry.bibtex,
+        note="",
         place=entry.place,
     )
 

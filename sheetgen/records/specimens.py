@@ -41,10 +41,9 @@ def _specimen(table: Table, smallest: float, reader: Reader) -> Specimen:
     for key in SIZES:
         size = values[key]
         if size and size.si < smallest * (1 - 1e-9):
-            reader.fault(
-                size.place,
-                f"{key}: {shown(size.text)} is thinner than one atom; expected at least the nearest-neighbour distance, {smallest * 1e9:.4g} nm. Check the number and its unit.",
-            )
+            least = f"expected at least the nearest-neighbour distance, {smallest * 1e9:.4g} nm"
+            message = f"{key}: {shown(size.text)} is thinner than one atom; {least}. Check the number and its unit."
+            reader.fault(size.place, message)
     return Specimen(
         name=text_of(table.node("name")),
         form=form,
@@ -60,10 +59,8 @@ def _check_size(table: Table, form: str, reader: Reader) -> None:
     wanted = FORMS[form]
     for key in SIZES:
         if key != wanted and key in table.entries:
-            reader.fault(
-                table.entries[key].key.place,
-                f"a {form} has no '{key}'; expected '{wanted}'. Correct the form or the key.",
-            )
+            message = f"a {form} has no '{key}'; expected '{wanted}'. Correct the form or the key."
+            reader.fault(table.entries[key].key.place, message)
     if wanted not in table.entries:
         reader.fault(table, f"a {form} needs '{wanted}'; add '{wanted}: {SPECIMEN[wanted].example}' or the like.")
 

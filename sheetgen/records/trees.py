@@ -31,15 +31,15 @@ class _GivenUpError(Exception):
     """So much is wrong, or so much is written, that reading on would say nothing new."""
 
 
-def read_tree(text: str, file: str, log: FaultLog) -> Table | None:
-    """The one mapping that a YAML text holds, or None with at least one fault logged.
+def read_tree(text: str, file: str, log: FaultLog, example: str = "name: Copper") -> Table | None:
+    """The one mapping that a YAML text holds, or None with at least one fault logged; `example` is a line of such a file.
 
     Bounded: a tree that is deeper or larger than a record needs is a fault, and so is every alias and tag.
     """
     if tab := _TAB.search(text):
         log.fault(place_of(text, tab.end() - 1, file), "a tab indents this line; YAML wants spaces. Replace it.")
         return None
-    builder = _Builder(file, log)
+    builder = _Builder(file, log, example)
     try:
         root = builder.document(iter(yaml.parse(text, Loader=_LOADER)))
     except yaml.MarkedYAMLError as error:
@@ -54,8 +54,9 @@ def read_tree(text: str, file: str, log: FaultLog) -> Table | None:
 class _Builder:
     """Turns events into nodes; counts the nodes that it made and the faults that it found."""
 
-    def __init__(self, file: str, log: FaultLog):
-        self.file, self.log, self.faults, self.nodes = file, log, 0, 0
+    def __init__(self, file: str, log: FaultLog, example: str):
+        self.file, self.log, self.example = file, log, example
+        self.faults = self.nodes = 0
 
     def place(self, mark: yaml.Mark | None) -> Place:
         return Place(self.file, mark.line + 1, mark.column + 1) if mark else Place(self.file)
@@ -77,9 +78,9 @@ class _Builder:
                 self.fault(event.start_mark, "a second YAML document begins here; expected one. Split the file.")
                 return None
         if root is None:
-            self.fault(None, "the file is empty; expected keys such as 'name: Copper'.")
+            self.fault(None, f"the file is empty; expected lines such as '{self.example}'.")
         elif not isinstance(root, Table):
-            self.fault(root.place, "the file holds no keys; expected lines such as 'name: Copper'.")
+            self.fault(root.place, f"the file holds no keys; expected lines such as '{self.example}'.")
         return root
 
     def node(self, event: yaml.Event, events: Iterator[yaml.Event], depth: int) -> Node:

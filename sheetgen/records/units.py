@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import math
 import re
+from dataclasses import dataclass, field
 from functools import cache, lru_cache
 from typing import TYPE_CHECKING, NamedTuple
 
@@ -96,103 +97,107 @@ def _ascii(text: str) -> str:
 _TOKEN = re.compile(r"\s*(?P<token>[A-Za-z_]+|(?:\^|\*\*)\s*(?:\(\s*[+-]?\d{1,9}\s*\)|[+-]?\d{1,9})|[*/()]|1(?![\d.]))")
 
 
+@dataclass(slots=True)
+class _Part:
+    """A factor to SI and the powers of the base units, of any part of a unit expression."""
+
+    factor: float = 1.0
+    powers: dict[str, float] = field(default_factory=dict)
+
+    def times(self, other: _Part, exponent: int) -> _Part:
+        """This part multiplied by another one raised to an exponent."""
+        powers = dict(self.powers)
+        for base, power in other.powers.items():
+            powers[base] = powers.get(base, 0) + exponent * power
+        try:
+            return _Part(self.factor * other.factor**exponent, powers)
+        except OverflowError:
+            return _Part(math.inf, powers)
+
+
 class _Expression:
     """Reads `product = power {[* | /] power}`, `power = (name | 1 | ( product )) [^ integer]`."""
 
     def __init__(self, plain: str, written: str):
-        self.written = written
+        self.written, self.position = written, 0
         self.tokens = self._tokens(plain.strip())
-        self.position = 0
-
-    def _tokens(self, plain: str) -> list[str]:
-        tokens, position = [], 0
-        while position < len(plain):
-            token = _TOKEN.match(plain, position)
-            if not token:
-                raise UnreadableError(self._complaint(plain[position:].strip()))
-            tokens.append(token["token"].replace("**", "^"))
-            position = token.end()
-        return tokens
-
-    def _complaint(self, rest: str) -> str:
-        if rest[0].isdigit():
-            return f"the unit {shown(self.written)} holds the number {shown(rest)}; expected one number, then its unit"
-        return f"the unit {shown(self.written)} cannot be read at {shown(rest)}; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
 
     def read(self) -> Unit:
         if not self.tokens:
             return Unit(1.0, 0.0, ())
         if len(self.tokens) == 1 and self.tokens[0] != "1":
             return _named(self.tokens[0], self.written)
-        factor, powers = self._product()
-        if self.position < len(self.tokens):
-            raise UnreadableError(self._complaint(self.tokens[self.position]))
-        return _unit(factor, 0.0, powers)
+        part = self._product()
+        if self._next() is not None:
+            raise self._unexpected(self._next())
+        return _unit(part.factor, 0.0, part.powers)
 
-    def _product(self) -> tuple[float, dict[str, float]]:
-        factor, powers, sign = 1.0, {}, 1
+    def _tokens(self, plain: str) -> list[str]:
+        tokens, position = [], 0
+        while position < len(plain):
+            token = _TOKEN.match(plain, position)
+            if not token:
+                raise self._unexpected(plain[position:].strip())
+            tokens.append(token["token"].replace("**", "^"))
+            position = token.end()
+        return tokens
+
+    def _next(self) -> str | None:
+        return self.tokens[self.position] if self.position < len(self.tokens) else None
+
+    def _product(self) -> _Part:
+        part, sign = _Part(), 1
         if self._next() == "/":  # "/cm^3" behind a number means per cubic centimetre
             self.position, sign = self.position + 1, -1
         while True:
-            self._multiply(powers, *(part := self._power())[1:], sign)
-            factor = _scaled(factor, part[0], sign)
+            part = part.times(self._power(), sign)
             following = self._next()
             if following is None or following == ")":
-                return factor, powers
+                return part
             sign = -1 if following == "/" else 1
             self.position += following in "*/"
 
-    @staticmethod
-    def _multiply(powers: dict[str, float], more: dict[str, float], sign: int) -> None:
-        for base, power in more.items():
-            powers[base] = powers.get(base, 0) + sign * power
-
-    def _power(self) -> tuple[float, dict[str, float]]:
-        factor, powers = self._atom()
-        following = self._next()
+    def _power(self) -> _Part:
+        part, following = self._atom(), self._next()
         if following is None or following[0] != "^":
-            return factor, powers
+            return part
         self.position += 1
         exponent = int(following.strip("^() "))
         if abs(exponent) > MAXIMUM_EXPONENT:
-            raise UnreadableError(
-                f"the unit {shown(self.written)} has the exponent {exponent}; expected at most {MAXIMUM_EXPONENT}"
-            )
-        return _scaled(1.0, factor, exponent), {base: power * exponent for base, power in powers.items()}
+            found = f"the unit {shown(self.written)} has the exponent {exponent}"
+            raise UnreadableError(f"{found}; expected at most {MAXIMUM_EXPONENT}")
+        return _Part().times(part, exponent)
 
-    def _atom(self) -> tuple[float, dict[str, float]]:
+    def _atom(self) -> _Part:
         token = self._next()
         self.position += 1
+        if token == "1":
+            return _Part()
         if token == "(":
             inside = self._product()
             if self._next() != ")":
                 raise UnreadableError(f"the unit {shown(self.written)} leaves a bracket open; close it")
             self.position += 1
             return inside
-        if token == "1":
-            return 1.0, {}
         if token is None or not (token[0].isalpha() or token[0] == "_"):
-            found = f"at {shown(token)}" if token else "at its end"
-            raise UnreadableError(
-                f"the unit {shown(self.written)} cannot be read {found}; expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
-            )
+            raise self._unexpected(token)
         unit = _named(token, self.written)
-        return unit.factor, dict(unit.dimension) | {"radian": unit.angle}
+        return _Part(unit.factor, dict(unit.dimension) | {"radian": unit.angle})
 
-    def _next(self) -> str | None:
-        return self.tokens[self.position] if self.position < len(self.tokens) else None
-
-
-def _scaled(factor: float, by: float, exponent: int) -> float:
-    try:
-        return factor * by**exponent
-    except OverflowError:
-        return math.inf
+    def _unexpected(self, rest: str | None) -> UnreadableError:
+        if rest and rest[0].isdigit():
+            found = f"the unit {shown(self.written)} holds the number {shown(rest)}"
+            return UnreadableError(f"{found}; expected one number, then its unit")
+        where = f"at {shown(rest)}" if rest else "at its end"
+        expected = "expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
+        return UnreadableError(f"the unit {shown(self.written)} cannot be read {where}; {expected}")
 
 
+# What a misspelt unit is likely to have been.
 _COMMON = (
-    "angstrom nm um mm cm m g kg s fs K degC eV meV J mJ mol ohm uohm S V uV A W T mT GPa Pa bar rad deg Hz GHz C percent"
-).split()
+    *("angstrom", "nm", "um", "mm", "cm", "m", "g", "kg", "mol", "s", "fs", "Hz", "GHz", "K", "degC", "rad", "deg"),
+    *("eV", "meV", "J", "mJ", "W", "Pa", "GPa", "bar", "A", "C", "V", "uV", "S", "ohm", "uohm", "T", "mT", "percent"),
+)
 
 
 @lru_cache(maxsize=4096)
@@ -200,7 +205,8 @@ def _named(name: str, written: str) -> Unit:
     """One unit name with its prefix, by the units library."""
     import pint
 
-    unknown = UnreadableError(f"{shown(name)} in {shown(written)} is no unit known here.{did_you_mean(name, _COMMON)}")
+    within = "" if name == written else f" in {shown(written)}"
+    unknown = UnreadableError(f"{shown(name)}{within} is no unit known here.{did_you_mean(name, _COMMON)}")
     try:
         one = _registry().Quantity(1.0, name).to_base_units()
         zero = _registry().Quantity(0.0, name).to_base_units()

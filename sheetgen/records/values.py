@@ -11,11 +11,8 @@ from sheetgen.records.measures import ANGLE, TEMPERATURE, Measure
 from sheetgen.records.model import Source, Value
 from sheetgen.records.nodes import Listing, Node, Scalar, Table
 from sheetgen.records.notation import Number, read_number
-from sheetgen.records.units import Unit, read_unit
+from sheetgen.records.units import Dimension, Unit, read_unit
 from sheetgen.records.unreadable import UnreadableError, sentence, shown
-
-# Angles and temperatures of the record are near these, so that the powers of ten of a slip still print shortly.
-_SHORT = "{:.6g}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,6 +40,10 @@ class Reader:
         """Note a remark at a node."""
         self.log.remark(where if isinstance(where, Place) else where.place, message)
 
+    def unreadable(self, where: Node | Place, name: str, error: UnreadableError) -> None:
+        """Note what a small parser found wrong with `name`."""
+        self.fault(where, sentence(f"{name}: {error}"))
+
     def value(self, node: Node, measure: Measure, name: str, origin: Origin | None = None) -> Value | None:
         """The value at a node, or None with a fault logged; `name` is what messages call it."""
         origin = origin or Origin()
@@ -50,9 +51,9 @@ class Reader:
             origin = self.origin(node, origin)
             node = node.entries["value"].node
         try:
-            return _value(node, measure, name, origin)
+            return _value(node, measure, origin)
         except UnreadableError as error:
-            self.fault(node, sentence(f"{name}: {error}"))
+            self.unreadable(node, name, error)
             return None
 
     def values(self, node: Node, measure: Measure, name: str) -> list[Value]:
@@ -97,9 +98,9 @@ def text_of(node: Node | None) -> str:
     return node.text.strip() if isinstance(node, Scalar) else ""
 
 
-def _value(node: Scalar, measure: Measure, name: str, origin: Origin) -> Value:
+def _value(node: Scalar, measure: Measure, origin: Origin) -> Value:
     number = read_number(node.text)
-    unit_text, unit = _unit_of(number, measure, name, node.text)
+    unit_text, unit = _unit_of(number, measure, node.text)
     si = number.value * unit.factor + unit.offset
     if not math.isfinite(si):
         raise UnreadableError(f"{shown(node.text)} is beyond what a number can hold; check the exponent")
@@ -120,7 +121,7 @@ def _value(node: Scalar, measure: Measure, name: str, origin: Origin) -> Value:
     )
 
 
-def _unit_of(number: Number, measure: Measure, name: str, text: str) -> tuple[str, Unit]:
+def _unit_of(number: Number, measure: Measure, text: str) -> tuple[str, Unit]:
     """The unit as written and what it means; a bare number is a pure number, and for an angle counts degrees."""
     expected = f"expected {measure.kind} such as '{measure.example}'"
     if not number.unit:
@@ -136,24 +137,42 @@ def _unit_of(number: Number, measure: Measure, name: str, text: str) -> tuple[st
     return number.unit, unit
 
 
-_LACKING = {"m": "length", "m^2": "area", "m^3": "volume", "K": "temperature", "K^2": "squared temperature",
-            "mol": "amount of substance", "mol K": "amount and temperature", "s": "time"}  # fmt: skip
+_LACKING = {
+    "m": "length",
+    "m^2": "area",
+    "m^3": "volume",
+    "K": "temperature",
+    "K^2": "squared temperature",
+    "mol": "amount of substance",
+    "mol K": "amount of substance and the temperature",
+    "s": "time",
+}
+_SLIPS = {"A": "Å", "C": "°C", "k": "K", "G": "GPa"}
 
 
 def _mend(written: str, unit: Unit, wanted: Unit) -> str:
-    """A closing sentence for a wrong dimension: which factor is too few or too many."""
-    if "/" in written and "(" not in written and " " in written:
-        before, after = written.split("/", 1)
-        try:
-            if read_unit(f"{before}/({after})").dimension == wanted.dimension:
-                return f" Put everything below the slash in brackets: '{before}/({after})'"
-        except UnreadableError:
-            pass
+    """A closing sentence for a wrong dimension: the unit that was meant, or the factor that is lacking."""
+    for meant in (_SLIPS.get(written), _bracketed(written)):
+        if meant and _dimension(meant) == wanted.dimension:
+            return f" Write {shown(meant)}"
     for factor, word in _LACKING.items():
         for sign, advice in ((1, f" Add the {word}"), (-1, f" Divide by the {word}")):
             if _product(unit, read_unit(factor), sign) == dict(wanted.dimension):
                 return advice
     return " Give a unit of that kind"
+
+
+def _bracketed(written: str) -> str:
+    """`W/m K` as `W/(m K)`: a slash divides by one factor, many a person means all that follow."""
+    before, slash, after = written.partition("/")
+    return f"{before}/({after})" if slash and not {"(", "/"} & set(after) else ""
+
+
+def _dimension(text: str) -> Dimension | None:
+    try:
+        return read_unit(text).dimension
+    except UnreadableError:
+        return None
 
 
 def _product(unit: Unit, factor: Unit, sign: int) -> dict[str, float]:
@@ -164,25 +183,21 @@ def _product(unit: Unit, factor: Unit, sign: int) -> dict[str, float]:
 
 
 def _check_range(si: float, unit_text: str, unit: Unit, measure: Measure, text: str) -> None:
-    # A bound itself may come out a rounding error beside the bound.
+    # A number at the bound may come out a rounding error beside it.
     slack = 1e-12 * abs(si)
     if measure.low - slack <= si <= measure.high + slack and not (measure.high_excluded and si >= measure.high):
         return
     low, high = (_bound(bound, unit_text, unit) for bound in (measure.low, measure.high))
-    below = "below" if measure.high_excluded else "to"
-    limits = f"{low} to {high}" if below == "to" else f"at least {low} and below {high}"
-    raise UnreadableError(
-        f"{shown(text)} is out of the physical range of {measure.kind}; expected {limits}. Check the number and its unit"
-    )
+    limits = f"at least {low} and below {high}" if measure.high_excluded else f"{low} to {high}"
+    out = f"{shown(text)} is out of the physical range of {measure.kind}"
+    raise UnreadableError(f"{out}; expected {limits}. Check the number and its unit")
 
 
 def _bound(si: float, unit_text: str, unit: Unit) -> str:
-    number = _SHORT.format((si - unit.offset) / unit.factor)
+    number = f"{(si - unit.offset) / unit.factor:.6g}"
     return number if unit_text == "1" else f"{number} {unit_text}"
 
 
 def _unknown_source(key: str, sources: Mapping[str, Source]) -> str:
-    return (
-        f"the source {shown(key)} is not in sources.bib; expected one of its keys. Add an entry {shown(key)} there, or correct"
-        f" the key.{did_you_mean(key, sources)}"
-    )
+    mend = f"Add an entry {shown(key)} there, or correct the key.{did_you_mean(key[:80], sources)}"
+    return f"the source {shown(key)} is not in sources.bib; expected one of its keys. {mend}"

@@ -19,11 +19,11 @@ _NUMBERS = [
     ),
     (
         re.compile(r"[-+]?0[\d_]+"),
-        "{found} is an octal number in YAML 1.1; write it without the leading zero, or as {quoted} in quotes for a text.",
+        "{found} is an octal number in YAML 1.1; write it without the leading zero, or for a text {quoted} in quotes.",
     ),
     (
         re.compile(r"[-+]?0(?:x[\da-fA-F_]+|b[01_]+)"),
-        "{found} is not a decimal number in YAML 1.1; write it in decimal digits, or as {quoted} in quotes for a text.",
+        "{found} is not a decimal number in YAML 1.1; write decimal digits, or for a text {quoted} in quotes.",
     ),
     (
         re.compile(r"[-+]?\d[\d_]*_[\d_]*(?:\.[\d_]*)?"),
