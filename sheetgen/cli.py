@@ -3,8 +3,6 @@
 from __future__ import annotations
 
 import json
-import os
-import sys
 import traceback
 from collections.abc import Iterable, Sequence
 from pathlib import Path
@@ -33,9 +31,7 @@ def run(words: Sequence[str]) -> int:
         return COMMAND_LINE
     except click.UsageError as error:
         return _failed(with_example(error), COMMAND_LINE)
-    except BrokenPipeError:
-        # Whoever reads our output has seen enough; nothing more may be written to it, not even at exit.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+    except SystemExit:  # click leaves this way where whoever reads our output has seen enough
         return DONE
     except Exception as error:  # the last net: a person gets a line that helps, not a traceback
         if show_traceback:

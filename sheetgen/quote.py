@@ -10,6 +10,7 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any
 
 from sheetgen.faults import did_you_mean
+from sheetgen.pages.numbers import NARROW, printed, unit_text
 
 if TYPE_CHECKING:
     from sheetgen.handbook import Handbook, Sheet
@@ -18,7 +19,7 @@ if TYPE_CHECKING:
 _AXES = {"temperature": "K", "edge": "nm", "photon_energy": "eV"}
 _COMMAND = re.compile(r"\\([a-zA-Z]+)")
 _UPRIGHT = re.compile(r"\\(?:mathrm|text|operatorname)\s*")
-_NAMED = {"hbar": "ħ", "langle": "⟨", "rangle": "⟩", "square": "□", "Box": "□", "infty": "∞", "cdot": "·"}
+_NAMED = {"hbar": "ħ", "langle": "⟨", "rangle": "⟩", "square": "□", "Box": "□", "infty": "∞", "cdot": "·", "ldots": "…"}
 
 
 class NotFoundError(Exception):
@@ -50,17 +51,33 @@ class Quote:
 
     def lines(self) -> Iterator[str]:
         """The quote as a person reads it: what it is, its values, and what holds for all of them."""
+        # Narrow spaces belong on paper; many terminals set them badly.
+        yield from (line.replace(NARROW, " ") for line in self._lines())
+
+    def _lines(self) -> Iterator[str]:
         name = f"{self.sheet.record.name}: {self.definition.title}  {plain(self.definition.symbol)}".rstrip()
         for entry in self.entries:
             yield f"{name} = {_amount(entry)}{_position(entry)}"
-        yield from _block("from", [self._input(id) for id in _every(self.entries, "depends_on")])
+        yield from _block("from", [self._input(id) for id in self._inputs()])
         yield from _block("assumes", [", ".join(self._assumed()) or "nothing beyond its inputs"])
         yield from _block("standing", list(dict.fromkeys(self._standing(entry) for entry in self.entries)))
 
+    def _inputs(self) -> list[str]:
+        """Ids of the values of the record that the entries rest on, near or far."""
+        found, seen = [], set()
+        waiting = _every(self.entries, "depends_on")
+        while waiting:
+            name = waiting.pop(0)
+            if name in seen:
+                continue
+            seen.add(name)
+            if name in self.sheet.data["inputs"]:
+                found.append(name)
+            waiting += _every(self.sheet.entries(name), "depends_on")
+        return found
+
     def _input(self, id: str) -> str:
-        given = self.sheet.data["inputs"].get(id)
-        if given is None:
-            return id
+        given = self.sheet.data["inputs"][id]
         sources = f" [{', '.join(given['sources'])}]" if given.get("sources") else ""
         recalled = " (recalled, not checked)" if given.get("recalled") else ""
         return f"{id} = {_amount(given)}{_position(given)}{sources}{recalled}"
@@ -79,8 +96,9 @@ class Quote:
 
     def _standing(self, entry: Mapping[str, Any]) -> str:
         for held in self.sheet.data["held_against"]:
-            same = all(held.get(axis) in (None, entry.get(axis)) for axis in _AXES)
-            if held["quantity"] == self.definition.id and same and "ratio" in held and "specimen" not in held:
+            same = all(axis not in entry or held.get(axis) in (None, entry[axis]) for axis in _AXES)
+            decides = held["quantity"] == self.definition.id and held["standing"] == entry["standing"]
+            if decides and same and "ratio" in held and "specimen" not in held:
                 return f"{entry['standing']}: measured / model = {held['ratio']:.3g}{_position(held)}"
         return entry["standing"]
 
@@ -109,7 +127,7 @@ def find_sheet(sheets: Iterable[Sheet], word: str) -> Sheet:
         if found:
             slugs = ", ".join(sheet.record.slug for sheet in found)
             raise NotFoundError(f"'{word}' is the {names} of {len(found)} materials; choose one of {slugs}.")
-    known = [getattr(sheet.record, names) for sheet in sheets for names in ("slug", "name", "formula")]
+    known = [getattr(sheet.record, names) for sheet in sheets for names in ("formula", "name", "slug")]
     guess = did_you_mean(word, known) or f" It has {', '.join(sheet.record.slug for sheet in sheets)}."
     raise NotFoundError(f"The handbook has no material '{word}'.{guess}")
 
@@ -165,8 +183,6 @@ def _every(entries: Iterable[Mapping[str, Any]], key: str) -> list[str]:
 
 def _amount(entry: Mapping[str, Any]) -> str:
     """Value and unit; the digits in brackets are the standard uncertainty in the last places."""
-    from sheetgen.pages.numbers import printed, unit_text
-
     unit = unit_text(entry["unit"])
     values = entry["value"] if isinstance(entry["value"], list) else [entry["value"]]
     if values and isinstance(values[0], Mapping):

@@ -45,7 +45,7 @@ def test_installed_program_presses_a_folder_elsewhere(wheel, small_handbook, tmp
     assert run.stdout.startswith("out: 2 sheets; ")
     assert "materials/copper.html" in contents(small_handbook.parent / "out")
     place = subprocess.run(
-        [python, "-c", "import sheetgen; print(sheetgen.__file__)"], capture_output=True, text=True, check=True
+        [python, "-I", "-c", "import sheetgen; print(sheetgen.__file__)"], capture_output=True, text=True, check=True
     )
     assert Path(place.stdout.strip()).is_relative_to(packages.resolve())
 
