@@ -42,8 +42,8 @@ def to_si(number: float, unit: str) -> float:
 
     Raises UnreadableError for what is no unit.
     """
-    factor, offset, _ = read_unit(unit)
-    return number * factor + offset
+    meaning = read_unit(unit)
+    return number * meaning.factor + meaning.offset
 
 
 def si_factor(unit: str) -> float:
@@ -75,9 +75,17 @@ def read_unit(text: str) -> Unit:
 
 
 _SYMBOLS = [
-    ("\u00b5", "u"), ("\u03bc", "u"), ("°C", "degC"), ("℃", "degC"), ("°F", "degF"), ("°", "deg"),
-    ("Å", "angstrom"), ("Å", "angstrom"), ("%", "percent"), ("‰", "permille"),
-]  # fmt: skip
+    ("\u00b5", "u"),  # the micro sign and the Greek letter
+    ("\u03bc", "u"),
+    ("\u00c5", "angstrom"),  # the letter and the unit sign
+    ("\u212b", "angstrom"),
+    ("°C", "degC"),
+    ("℃", "degC"),
+    ("°F", "degF"),
+    ("°", "deg"),
+    ("%", "percent"),
+    ("‰", "permille"),
+]
 _RAISED = re.compile("[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+")
 _OHM = re.compile(r"[\u03a9\u2126](?P<next>[A-Za-z])?")
 _PER_SQUARE = re.compile(r"\s*(?:/|\bper\b)\s*(?:sq|square|□|◻|\(sq\))$")
@@ -125,7 +133,7 @@ class _Expression:
     def read(self) -> Unit:
         if not self.tokens:
             return Unit(1.0, 0.0, ())
-        if len(self.tokens) == 1 and self.tokens[0] != "1":
+        if len(self.tokens) == 1 and _is_name(self.tokens[0]):
             return _named(self.tokens[0], self.written)
         part = self._product()
         if self._next() is not None:
@@ -179,7 +187,7 @@ class _Expression:
                 raise UnreadableError(f"the unit {shown(self.written)} leaves a bracket open; close it")
             self.position += 1
             return inside
-        if token is None or not (token[0].isalpha() or token[0] == "_"):
+        if token is None or not _is_name(token):
             raise self._unexpected(token)
         unit = _named(token, self.written)
         return _Part(unit.factor, dict(unit.dimension) | {"radian": unit.angle})
@@ -191,6 +199,10 @@ class _Expression:
         where = f"at {shown(rest)}" if rest else "at its end"
         expected = "expected a form such as 'µΩ cm' or 'mJ/(mol K^2)'"
         return UnreadableError(f"the unit {shown(self.written)} cannot be read {where}; {expected}")
+
+
+def _is_name(token: str) -> bool:
+    return token[0].isalpha() or token[0] == "_"
 
 
 # What a misspelt unit is likely to have been.
@@ -206,16 +218,18 @@ def _named(name: str, written: str) -> Unit:
     import pint
 
     within = "" if name == written else f" in {shown(written)}"
-    unknown = UnreadableError(f"{shown(name)}{within} is no unit known here.{did_you_mean(name, _COMMON)}")
+    registry = _registry()
     try:
-        one = _registry().Quantity(1.0, name).to_base_units()
-        zero = _registry().Quantity(0.0, name).to_base_units()
+        one, zero = (registry.Quantity(number, name).to_base_units() for number in (1.0, 0.0))
+        if not zero.magnitude:
+            return _unit(one.magnitude, 0.0, dict(one.unit_items()))
+        if dict(one.unit_items()) == {"kelvin": 1}:
+            degree = registry.Quantity(1.0, f"delta_{registry.Unit(name)}").to_base_units()
+            return _unit(degree.magnitude, zero.magnitude, {"kelvin": 1})
     except (pint.PintError, ValueError, AttributeError):
-        raise unknown from None
-    unit = _unit(one.magnitude - zero.magnitude, zero.magnitude, dict(one.unit_items()))
-    if unit.offset and unit.dimension != (("kelvin", 1),):
-        raise unknown  # logarithmic units such as dB
-    return unit
+        pass
+    # A logarithmic unit such as dB is none for us: no value of a record is a level.
+    raise UnreadableError(f"{shown(name)}{within} is no unit known here.{did_you_mean(name, _COMMON)}")
 
 
 def _unit(factor: float, offset: float, powers: dict[str, float]) -> Unit:
