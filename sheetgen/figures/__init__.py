@@ -15,6 +15,8 @@ __all__ = ["Figure", "draw_all"]
 # In the order of the sheet: one module each, with one function `draw(subject)`.
 MODULES = (
     "parabola",
+    "bands",
+    "zone",
     "density_of_states",
     "counting",
     "resistivity",

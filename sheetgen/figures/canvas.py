@@ -99,6 +99,7 @@ def _add_axes(figure: Figure, panel: Panel, height: float) -> None:
             loc="lower left",
             bbox_to_anchor=((LEGEND_START - left) / width, 1.0 + LEGEND_RISE / tall),
             ncols=panel.columns,
+            handlelength=1.0 if all(key.kind == "points" for key in panel.keys) else 2.2,
         )
         # A legend draws copies of its handles; the name of the look has to be put on those.
         for drawn, key in zip(legend.legend_handles, panel.keys, strict=True):
@@ -109,7 +110,8 @@ def _set_axis(axes, name: str, axis: Axis, length: float) -> None:
     own = getattr(axes, f"{name}axis")
     getattr(axes, f"set_{name}scale")(axis.scale)
     getattr(axes, f"set_{name}lim")(axis.low, axis.high)
-    getattr(axes, f"set_{name}label")(axis.label)
+    ends = {"loc": "right" if name == "x" else "top"} if axis.aside else {}
+    getattr(axes, f"set_{name}label")(axis.label, **ends)
     if axis.bare:
         own.set_major_locator(NullLocator())
     elif axis.ticks is not None:

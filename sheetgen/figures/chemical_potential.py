@@ -6,9 +6,9 @@ import numpy as np
 from scipy import constants as c
 
 from sheetgen.figures.density_of_states import LOOKS, occupation
-from sheetgen.figures.layout import stacked
+from sheetgen.figures.layout import rows_for, stacked
 from sheetgen.figures.plot import Area, Axis, Curve, Figure, Note, Panel, Plot, Points, Rule, keys_of
-from sheetgen.figures.scales import snap_up
+from sheetgen.figures.scales import FINE_STEPS, snap_up
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.subject import Subject
 from sheetgen.figures.words import enumeration, kelvin, number
@@ -24,9 +24,9 @@ def draw(subject: Subject) -> Figure | None:
 
 def plot(subject: Subject) -> Plot:
     """Occupation over energies from the Fermi level; µ/E_F over T/T_F, the same curve for every gas."""
-    height, upper, lower = stacked(70, 86, (1, 2))
-    reach = snap_up(7.5 * c.k * max(subject.temperatures) / MILLIELECTRONVOLT)
+    reach = snap_up(7.5 * c.k * max(subject.temperatures) / MILLIELECTRONVOLT, FINE_STEPS)
     edges, potential = _occupations(subject, reach), _potential(subject)
+    height, upper, lower = stacked(70, 86, (rows_for(edges, 4), 2))
     panels = (
         Panel(
             upper,

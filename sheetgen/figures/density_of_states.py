@@ -6,7 +6,7 @@ import numpy as np
 from scipy import constants as c
 from scipy.special import expit
 
-from sheetgen.figures.layout import single
+from sheetgen.figures.layout import rows_for, single
 from sheetgen.figures.plot import Area, Axis, Curve, Figure, Note, Panel, Plot, Rule, keys_of
 from sheetgen.figures.scales import FINE_STEPS, snap_up
 from sheetgen.figures.stamp import stamp
@@ -16,7 +16,7 @@ from sheetgen.figures.words import energy, energy_unit, enumeration, kelvin, num
 # States per electronvolt and cubic (square) nanometre.
 UNIT = {3: c.e * 1e-27, 2: c.e * 1e-18}
 LABEL = {3: "*g* / (eV⁻¹ nm⁻³)", 2: "*g* / (eV⁻¹ nm⁻²)"}
-LOOKS = ("two", "three", "four")
+LOOKS = ("two", "three", "four", "ink")
 
 
 def draw(subject: Subject) -> Figure | None:
@@ -43,7 +43,7 @@ def plot(subject: Subject) -> Plot:
     layers.append(Rule("Fermi level", x=level / joules, look="rule"))
     layers.append(Note(f"*E*_{{F}} = {energy(level)}", level / joules, top, "end", dx=-3, dy=-9, ink="ink"))
     x, y = Axis(f"*E* / {name}", 0, end / joules), Axis(LABEL[subject.dimension], 0, top)
-    panel = Panel(single(2), x, y, tuple(layers), keys_of(tuple(layers)), 3)
+    panel = Panel(single(rows_for(layers, 3)), x, y, tuple(layers), keys_of(tuple(layers)), 3)
     return Plot("density-of-states", subject.slug, f"Density of states: {subject.name}", _words(subject), (panel,))
 
 

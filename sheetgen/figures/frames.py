@@ -11,7 +11,7 @@ from functools import lru_cache
 
 from sheetgen.figures import style
 from sheetgen.figures.markup import spans
-from sheetgen.figures.plot import Panel, Plot
+from sheetgen.figures.plot import Axis, Panel, Plot
 
 
 @dataclass(frozen=True)
@@ -24,7 +24,15 @@ class FrameSpec:
 
 def spec_of(plot: Plot) -> FrameSpec:
     """The part of a plot that other materials share."""
-    return FrameSpec(plot.height, tuple(replace(panel, layers=()) for panel in plot.panels))
+    return FrameSpec(
+        plot.height,
+        tuple(replace(p, layers=(), x=_seen(p.x), y=_seen(p.y)) for p in plot.panels),
+    )
+
+
+def _seen(axis: Axis) -> Axis:
+    """What a frame shows of an axis: of one without ticks, not even its range."""
+    return replace(axis, low=0.0, high=1.0, scale="linear", column="") if axis.bare else replace(axis, column="")
 
 
 @lru_cache(maxsize=1024)

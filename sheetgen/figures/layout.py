@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+
+from sheetgen.figures.plot import Layer, keys_of
 from sheetgen.figures.style import HEIGHT, WIDTH
 
 LEFT, RIGHT, BOTTOM, TOP = 40.0, 9.0, 28.0, 8.0
@@ -25,3 +28,8 @@ def stacked(
     start = BOTTOM + lower + TOP + LEGEND_ROW * rows[1] + (4.0 if shared else BOTTOM)
     high = (left, start, WIDTH - left - RIGHT, upper)
     return start + upper + TOP + LEGEND_ROW * rows[0], high, low
+
+
+def rows_for(layers: Iterable[Layer], columns: int) -> int:
+    """Rows that the legend of these layers takes."""
+    return -(-len(keys_of(tuple(layers))) // columns)

@@ -9,6 +9,42 @@ from xml.sax.saxutils import escape
 _PIECE = re.compile(r"\*([^*]+)\*|_\{([^}]*)\}|\^\{([^}]*)\}")
 
 
+_COMMANDS = {
+    "alpha": "α", "beta": "β", "gamma": "γ", "delta": "δ", "varepsilon": "ε", "kappa": "κ", "lambda": "λ", "mu": "µ",
+    "rho": "ρ", "sigma": "σ", "tau": "τ", "phi": "φ", "varphi": "φ", "chi": "χ", "omega": "ω", "Omega": "Ω",
+    "hbar": "ħ", "langle": "⟨", "rangle": "⟩", "cdot": "·", "times": "×", ",": "\u202f", "%": "%",
+}  # fmt: skip
+_TOKEN = re.compile(r"\\mathrm\{([^{}]*)\}|\\([A-Za-z]+|[,%])\s*|([_^])|([{}])|(.)", re.DOTALL)
+
+
+def from_latex(symbol: str) -> str | None:
+    """A symbol of the few LaTeX forms that declarations use, in our mark-up; None where it needs more than that.
+
+    Letters are italic, what stands in \\mathrm is upright; one level of sub- and superscripts.
+    """
+    out, raised, depth = [], "", 0
+    for upright, command, shift, brace, letter in _TOKEN.findall(symbol):
+        if shift and not raised:
+            raised = shift
+            continue
+        if brace:
+            depth += 1 if brace == "{" else -1
+            out.append({"{": f"{raised}{{", "}": "}"}[brace] if raised or brace == "}" else "")
+            raised = "" if brace == "{" else raised
+            continue
+        if letter == " ":
+            continue
+        known = upright or _COMMANDS.get(command, "") or letter
+        if not known or shift:
+            return None
+        if raised or depth:
+            out.append(f"{raised}{{{known}}}" if raised else known)
+            raised = ""
+        else:
+            out.append(f"*{known}*" if known.isalpha() and not upright else known)
+    return "".join(out)
+
+
 def plain(text: str) -> str:
     """The label as one line of text without mark-up."""
     return _PIECE.sub(lambda m: m[1] or (f"_{m[2]}" if m[2] is not None else f"^{m[3]}"), text)

@@ -6,6 +6,7 @@ import numpy as np
 from scipy import constants as c
 
 from sheetgen.figures.layout import stacked
+from sheetgen.figures.markup import plain
 from sheetgen.figures.plot import Area, Axis, Curve, Figure, Key, Panel, Plot, Points, Rule, keys_of
 from sheetgen.figures.scales import FINE_STEPS, snap_up
 from sheetgen.figures.stamp import stamp
@@ -28,9 +29,10 @@ def plot(subject: Subject) -> Plot:
     energies = np.union1d(np.linspace(end / 400, end, 240), np.geomspace(end / 4000, end / 10, 60))
     height, upper, lower = stacked(80, 88, (2, 2), shared=True)
     x = Axis("*ħω* / eV", 0, end)
+    above = Axis("", 0, end, blank=True, column=plain(x.label))
     reflectance, permittivity = _reflectance(subject, energies), _permittivity(subject, energies)
     panels = (
-        Panel(upper, Axis("", 0, end, blank=True), Axis("*R*", 0, 1.05), reflectance, keys_of(reflectance), 3),
+        Panel(upper, above, Axis("*R*", 0, 1.05), reflectance, keys_of(reflectance), 3),
         Panel(lower, x, Axis("*ε*", *PERMITTIVITY_RANGE), permittivity, _keys(permittivity), 2),
     )
     title = f"Reflectance and permittivity: {subject.name}"
@@ -44,7 +46,7 @@ def _keys(permittivity: tuple) -> tuple[Key, ...]:
 
 def _reflectance(subject: Subject, energies: np.ndarray) -> tuple:
     model = subject.curve("normal_reflectance", photon_energy=energies * c.e)
-    layers = [*_threshold(subject), Curve("Drude", energies, model)]
+    layers = [*_threshold(subject, energies[-1]), Curve("Drude", energies, model)]
     if subject.has("plasma_edge_energy"):
         layers.append(Rule("plasma edge", x=subject.si("plasma_edge_energy") / c.e))
     if subject.record.optical:
@@ -61,7 +63,7 @@ def _permittivity(subject: Subject, energies: np.ndarray) -> tuple:
         subject.input("background_permittivity"),
     )
     layers = [
-        *_threshold(subject),
+        *_threshold(subject, energies[-1]),
         Rule("", y=0.0, look="axis"),
         Curve("real part", energies, model.real),
         Curve("imaginary part", energies, model.imag, "three"),
@@ -83,10 +85,10 @@ def _measured(subject: Subject) -> tuple[np.ndarray, np.ndarray]:
     return energies, np.array([complex(point.n.si, point.k.si) for point in points])
 
 
-def _threshold(subject: Subject) -> list[Area]:
+def _threshold(subject: Subject, end: float) -> list[Area]:
     """The energies at which transitions between bands add to what free electrons do."""
     start = subject.input("measured_interband_threshold") / c.e
-    if not np.isfinite(start):
+    if not start < end:
         return []
     x = np.array([start, 1e3])
     return [Area("interband transitions", x, np.full(2, -1e9), np.full(2, 1e9), "faint", unlisted=True)]

@@ -24,7 +24,8 @@ class Figure:
 class Axis:
     """One axis: its label as `quantity / unit`, its range, and its ticks where they are not left to matplotlib.
 
-    A `bare` axis has no ticks, a `blank` one ticks without numbers.
+    A `bare` axis has no ticks, a `blank` one ticks without numbers; `aside` sets the label flush with the end, for
+    one longer than the axis. `column` heads the CSV where it is not the label; with neither there is no column.
     """
 
     label: str
@@ -34,6 +35,8 @@ class Axis:
     ticks: tuple[tuple[float, str], ...] | None = None
     bare: bool = False
     blank: bool = False
+    aside: bool = False
+    column: str = ""
 
 
 @dataclass(frozen=True)
@@ -74,7 +77,10 @@ class Area:
 
 @dataclass(frozen=True)
 class Points:
-    """Markers, with standard uncertainties of y (or of x) where they are known and links where they lead on."""
+    """Markers, with standard uncertainties of y (or of x) where they are known.
+
+    Each point may have a link (where to, and what it is called) and, for the CSV, a name of its own.
+    """
 
     name: str
     x: np.ndarray
@@ -83,6 +89,7 @@ class Points:
     y_uncertainty: np.ndarray | None = None
     x_uncertainty: np.ndarray | None = None
     links: tuple[tuple[str, str], ...] = ()
+    names: tuple[str, ...] = ()
     unlisted: bool = False
 
 
@@ -98,7 +105,7 @@ class Rule:
 
 @dataclass(frozen=True)
 class Note:
-    """Words at a point of the panel; `dx`, `dy` shift them by points, dy upwards."""
+    """Words at a point of the panel; `dx`, `dy` shift them by points, dy upwards; `link` is where they lead."""
 
     text: str
     x: float
@@ -107,9 +114,21 @@ class Note:
     dx: float = 0.0
     dy: float = 0.0
     ink: str = "ink"
+    link: str = ""
 
 
-Layer = Curve | Area | Points | Rule | Note
+@dataclass(frozen=True)
+class Shape:
+    """A closed outline, filled."""
+
+    name: str
+    x: np.ndarray
+    y: np.ndarray
+    look: str = "one"
+    unlisted: bool = True
+
+
+Layer = Curve | Area | Shape | Points | Rule | Note
 
 
 @dataclass(frozen=True)
@@ -139,6 +158,6 @@ class Plot:
 
 def keys_of(layers: tuple[Layer, ...]) -> tuple[Key, ...]:
     """A legend that names every curve, area, set of points and rule that has a name once, in their order."""
-    kinds = {Curve: "line", Area: "area", Points: "points", Rule: "line"}
+    kinds = {Curve: "line", Area: "area", Shape: "area", Points: "points", Rule: "line"}
     keys = [Key(layer.name, kinds[type(layer)], layer.look) for layer in layers if type(layer) in kinds and layer.name]
     return tuple(dict.fromkeys(keys))

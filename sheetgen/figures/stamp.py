@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 from xml.sax.saxutils import escape, quoteattr
@@ -11,11 +12,12 @@ import numpy as np
 from sheetgen.figures import style
 from sheetgen.figures.frames import frame, spec_of, text_element
 from sheetgen.figures.marks import bar_path, marker_path
-from sheetgen.figures.plot import Area, Curve, Figure, Note, Panel, Plot, Points, Rule
+from sheetgen.figures.plot import Area, Curve, Figure, Note, Panel, Plot, Points, Rule, Shape
 from sheetgen.figures.scales import place, value
 from sheetgen.figures.table import Series, csv_of
 from sheetgen.figures.thinning import clip, runs, thin
 
+_CLASSES = re.compile(r'class="([^"]*)"')
 UNIT = style.UNITS_PER_POINT
 MILLIMETRES_PER_POINT = 25.4 / 72
 
@@ -39,7 +41,8 @@ def stamp(plot: Plot) -> Figure:
 
 def _document(plot: Plot, content: str) -> str:
     name = f"{plot.owner}-{plot.id}"
-    linked = any(isinstance(layer, Points) and layer.links for panel in plot.panels for layer in panel.layers)
+    layers = (layer for panel in plot.panels for layer in panel.layers)
+    linked = any(getattr(layer, "links", ()) or getattr(layer, "link", "") for layer in layers)
     width, height = round(style.WIDTH * UNIT), round(plot.height * UNIT)
     return (
         f'<svg xmlns="http://www.w3.org/2000/svg" class="sheetgen-figure" role="{"group" if linked else "img"}" '
@@ -47,9 +50,13 @@ def _document(plot: Plot, content: str) -> str:
         f'viewBox="0 0 {width} {height}" aria-labelledby="{name}-title {name}-desc">'
         f'<title id="{name}-title">{escape(plot.title)}</title>'
         f'<desc id="{name}-desc">{escape(plot.description)}</desc>'
-        f"<style>{style.sheet()}</style>"
+        f"<style>{style.sheet(_classes(content))}</style>"
         f'<path class="gr" d="M0 0H{width}V{height}H0z"/>{content}</svg>\n'
     )
+
+
+def _classes(content: str) -> frozenset[str]:
+    return frozenset(name for names in set(_CLASSES.findall(content)) for name in names.split()) | {"gr"}
 
 
 def _panel(panel: Panel, number: int, height: float, series: list[Series]) -> str:
@@ -58,7 +65,7 @@ def _panel(panel: Panel, number: int, height: float, series: list[Series]) -> st
     lines: list[Line] = []
     owners: list[tuple[int, str, Curve | Area]] = []
     for layer in panel.layers:
-        if isinstance(layer, (Curve, Area)):
+        if isinstance(layer, (Curve, Area, Shape)):
             lines += (Line(len(owners), x, y) for x, y in _outlines(panel, layer))
             owners.append((len(elements), "l-" if isinstance(layer, Curve) else "a-", layer))
             elements.append("")
@@ -73,6 +80,8 @@ def _panel(panel: Panel, number: int, height: float, series: list[Series]) -> st
 
 def _outlines(panel: Panel, layer: Curve | Area) -> Iterator[tuple[np.ndarray, np.ndarray]]:
     left, bottom, width, tall = panel.box
+    if isinstance(layer, Shape):
+        return iter(((place(panel.x, layer.x, left, width), place(panel.y, layer.y, bottom, tall)),))
     if isinstance(layer, Curve):
         x, y = place(panel.x, layer.x, left, width), place(panel.y, layer.y, bottom, tall)
     else:
@@ -103,7 +112,7 @@ def _thinned(panel, lines, owners, number, height, series) -> Iterator[tuple[tup
     for index, line in enumerate(lines):
         first, last = bounds[index], bounds[index + 1]
         layer = owners[line.element][2]
-        end = "z" if isinstance(layer, Area) or layer.closed else ""
+        end = "z" if not isinstance(layer, Curve) or layer.closed else ""
         moves = " ".join(map(str, steps[2 * first : 2 * last - 2]))
         path = f"M{whole[first, 0]} {whole[first, 1]}l{moves}{end}"
         paths[line.element] = paths.get(line.element, "") + path
@@ -129,6 +138,7 @@ def _draw_points(panel: Panel, layer: Points, number: int, height: float, series
                     None if given is None else np.asarray(given, dtype=float)[seen].tolist()
                     for given in (layer.x_uncertainty, layer.y_uncertainty)
                 ),
+                [name for name, shown in zip(layer.names, seen, strict=True) if shown] if layer.names else None,
             )
         )
     bars = _bars(panel, layer, x, y, seen, height)
@@ -136,7 +146,7 @@ def _draw_points(panel: Panel, layer: Points, number: int, height: float, series
     if not layer.links:
         return bars + (f'<path class="m-{layer.look}" d="{"".join(markers.values())}"/>' if markers else "")
     return bars + "".join(
-        f'<a href={quoteattr(layer.links[i][0])} target="_top"><title>{escape(layer.links[i][1])}</title>'
+        f"<a href={quoteattr(layer.links[i][0])}><title>{escape(layer.links[i][1])}</title>"
         f'<path class="m-{layer.look}" d="{path}"/></a>'
         for i, path in markers.items()
     )
@@ -184,7 +194,8 @@ def _draw_note(panel: Panel, layer: Note, number: int, height: float, series: li
     y = height - float(place(panel.y, layer.y, bottom, tall)) - layer.dy
     anchor = {"middle": "mi", "end": "en"}.get(layer.anchor, "")
     ink = "" if layer.ink == "ink" else f"t-{layer.ink}"
-    return text_element(x, y, layer.text, " ".join(filter(None, ("no", anchor, ink))))
+    text = text_element(x, y, layer.text, " ".join(filter(None, ("no", anchor, ink))))
+    return f"<a href={quoteattr(layer.link)}>{text}</a>" if layer.link else text
 
 
 _DRAWN = {Points: _draw_points, Rule: _draw_rule, Note: _draw_note}

@@ -7,6 +7,7 @@ survives grey printing and any colour vision.
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 from functools import lru_cache
 
@@ -31,8 +32,8 @@ LIGHT = {
     "four": "#6b4c8a",
 }
 DARK = {
-    "ground": "#14181d",
-    "ink": "#e6e9ed",
+    "ground": "#14171a",
+    "ink": "#e9e7e2",
     "faint": "#a4adb8",
     "grid": "#2b323a",
     "one": "#8db9e8",
@@ -40,6 +41,7 @@ DARK = {
     "three": "#98c6a4",
     "four": "#c2a5e0",
 }
+_CLASS = re.compile(r"\.([a-z-]+)")
 INKS = ("ink", "faint", "grid", "one", "two", "three", "four")
 
 
@@ -66,7 +68,7 @@ STROKES = {
     "hidden": Stroke("faint", 0.5, (1.5, 1.5)),
     "edge": Stroke("ink", 0.8),
 }
-AREAS = {"one": 0.17, "two": 0.3, "three": 0.2, "four": 0.2, "faint": 0.13}
+AREAS = {"ground": 1.0, "one": 0.17, "two": 0.3, "three": 0.2, "four": 0.2, "faint": 0.13}
 
 # Each marker with its ink and whether it is filled: shape tells apart what colour cannot.
 MARKERS = {
@@ -93,7 +95,7 @@ def _rules() -> list[str]:
         ".en{text-anchor:end}",
         # A ground-coloured rim keeps a note readable where it crosses a line.
         ".no,.ha{paint-order:stroke;stroke:var(--ground);stroke-width:220;stroke-linejoin:round}",
-        "i,.i{font-style:italic}",
+        ".i{font-style:italic}",
         ".s{font-size:72%}",
         ".gr{fill:var(--ground)}",
         "path{fill:none;stroke-linejoin:round;stroke-linecap:butt}",
@@ -111,6 +113,7 @@ def _rules() -> list[str]:
     for ink in ("one", "two", "three", "four", "ink", "faint"):
         rules.append(f".e-{ink}{{stroke:var(--{ink});stroke-width:70}}")
     rules.append("a:hover path,a:focus path{stroke:var(--ink);stroke-width:160}")
+    rules.append("a:hover text,a:focus text{text-decoration:underline}")
     return rules
 
 
@@ -118,17 +121,18 @@ def _variables(colours: dict[str, str]) -> str:
     return "".join(f"--{name}:{colour};" for name, colour in colours.items()).rstrip(";")
 
 
-@lru_cache(maxsize=1)
-def sheet() -> str:
-    """The style sheet inside each SVG; every rule is bound to the class `sheetgen-figure`.
+@lru_cache(maxsize=256)
+def sheet(classes: frozenset[str]) -> str:
+    """The style sheet of an SVG that uses these classes; every rule is bound to the class `sheetgen-figure`.
 
     A page that shows the SVG inline may set the same variables; on dark screens they turn by themselves, on
     paper never.
     """
     root = ".sheetgen-figure"
     scoped = "".join(
-        ",".join(f"{root} {part}" for part in rule.partition("{")[0].split(",")) + "{" + rule.partition("{")[2]
-        for rule in _rules()
+        ",".join(f"{root} {part}" for part in selector.split(",")) + "{" + declarations
+        for selector, _, declarations in (rule.partition("{") for rule in _rules())
+        if not (named := set(_CLASS.findall(selector))) or named & classes
     )
     return (
         f"{root}{{{_variables(LIGHT)}}}"

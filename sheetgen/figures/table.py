@@ -19,6 +19,7 @@ class Series:
     y: list[float]
     x_uncertainty: list[float] | None = None
     y_uncertainty: list[float] | None = None
+    names: list[str] | None = None
 
 
 def csv_of(panels: tuple[Panel, ...], series: Iterable[Series]) -> str:
@@ -26,14 +27,11 @@ def csv_of(panels: tuple[Panel, ...], series: Iterable[Series]) -> str:
 
     Uncertainties stand in columns of their own, `u(…)`, where a layer has any.
     """
-    series = [one for one in series if one.name]
+    series = [one for one in series if one.name or one.names]
     columns: list[str] = []
     slots = {}
     for number, panel in enumerate(panels):
-        labels = [
-            plain(axis.label) or f"{side} of panel {number + 1}"
-            for side, axis in zip("xy", (panel.x, panel.y), strict=True)
-        ]
+        labels = [axis.column or plain(axis.label) for axis in (panel.x, panel.y)]
         for one in series:
             if one.panel == number:
                 wanted = labels + [
@@ -41,7 +39,7 @@ def csv_of(panels: tuple[Panel, ...], series: Iterable[Series]) -> str:
                     for label, given in zip(labels, (one.x_uncertainty, one.y_uncertainty), strict=True)
                     if given is not None
                 ]
-                columns += [label for label in wanted if label not in columns]
+                columns += [label for label in wanted if label not in ("", "u()", *columns)]
         slots[number] = labels
     lines = [",".join(map(_quoted, ("series", *columns)))]
     for one in series:
@@ -56,11 +54,13 @@ def _lines(one: Series, labels: list[str], columns: list[str]) -> list[str]:
         f"u({labels[0]})": one.x_uncertainty,
         f"u({labels[1]})": one.y_uncertainty,
     }
-    filled = [given.get(column) or None for column in columns]
-    name = _quoted(one.name).replace("%", "%%")
-    pattern = ",".join([name, *("" if column is None else "%.6g" for column in filled)])
-    numbers = [column for column in filled if column is not None]
-    return [(pattern % row).replace("nan", "") for row in zip(*numbers, strict=True)]
+    filled = [given.get(column) for column in columns]
+    pattern = "".join(",%.6g" if column else "," for column in filled)
+    rows = zip(*(column for column in filled if column), strict=True)
+    if one.names is None:
+        pattern = _quoted(one.name).replace("%", "%%") + pattern
+        return [pattern % row for row in rows]
+    return [_quoted(name) + pattern % row for name, row in zip(one.names, rows, strict=True)]
 
 
 def _quoted(text: str) -> str:

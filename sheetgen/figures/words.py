@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 
 from scipy import constants as c
 
@@ -41,3 +42,21 @@ def kelvin(temperature: float) -> str:
 def enumeration(items: list[str]) -> str:
     """Items as a list in a sentence."""
     return items[0] if len(items) == 1 else f"{', '.join(items[:-1])} and {items[-1]}"
+
+
+_SIGNS = {"uohm": "µΩ", "fohm": "fΩ", "ohm": "Ω", "angstrom": "Å", "um": "µm", "uV": "µV"}
+
+
+def unit_label(unit: str) -> str:
+    """A unit such as `mJ/(mol K^2)` as the SI Brochure prints it, mJ mol⁻¹ K⁻²; in brackets where it has parts."""
+    over, _, under = unit.partition("/")
+    parts = [_power(word, 1) for word in over.split() if word != "1"]
+    parts += [_power(word, -1) for word in under.strip("()").split()]
+    return parts[0] if len(parts) == 1 else f"({' '.join(parts)})"
+
+
+def _power(word: str, sign: int) -> str:
+    name, _, power = word.partition("^")
+    exponent = sign * int(power or 1)
+    printed = "".join(_SIGNS.get(piece, piece) for piece in re.split(r"(\W+)", name))
+    return printed if exponent == 1 else printed + str(exponent).translate(_SUPERSCRIPTS)
