@@ -11,7 +11,7 @@ from sheetgen.faults import FaultLog, MachineError, Place
 MAXIMUM_BYTES = 1_000_000
 
 # C0 and C1 controls, direction marks and overrides, invisible characters, and the line ends that only YAML knows.
-_HIDDEN = re.compile(
+HIDDEN = re.compile(
     "[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u061c\u200b-\u200f\u2028-\u202e\u2060-\u2069\ufeff\ufffe\uffff]"
 )
 _LINE_END = re.compile(r"\r\n?|\n")
@@ -56,7 +56,7 @@ def _decoded(data: bytes, place: Place, log: FaultLog) -> str | None:
         found = f"the byte 0x{data[error.start]:02x} is not UTF-8"
         log.fault(place_of(before, len(before), place.file), f"{found}; save the file in the encoding UTF-8.")
         return None
-    if hidden := _HIDDEN.search(text):
+    if hidden := HIDDEN.search(text):
         log.fault(
             place_of(text, hidden.start(), place.file),
             f"the hidden character U+{ord(hidden[0]):04X} stands here; expected visible text. Delete it.",

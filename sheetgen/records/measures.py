@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from math import inf
+from math import inf, radians
 
 
 @dataclass(frozen=True, slots=True)
@@ -29,7 +29,7 @@ class Measure:
 
 TEMPERATURE = Measure("a temperature", "K", "293 K", 0, 1e5)
 LENGTH = Measure("a length", "m", "3.6149(2) Å", 1e-10, 1e-6)
-ANGLE = Measure("an angle", "rad", "57.23(1)°", 1e-3, 3.1405)
+ANGLE = Measure("an angle", "rad", "57.23(1)°", radians(1), radians(179))
 RATIO = Measure("a ratio of lengths", "1", "1.6235(3)", 0.05, 50)
 SIZE = Measure("a length", "m", "40(2) nm", 1e-10, 1.0)
 MASS = Measure("a mass in electron masses", "1", "0.067", 1e-4, 1e4)

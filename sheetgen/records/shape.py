@@ -93,7 +93,7 @@ def _mend(key: str, known: dict) -> str:
     """A closing sentence for an unknown key: a comma in a number, the section where it belongs, or a near word."""
     if "value" in known and key[:1].isdigit():
         return " A comma ends a value in braces: write a decimal point, or put the text in quotes."
-    sections = canonical_schema()["properties"]
+    sections = {} if "value" in known else canonical_schema()["properties"]
     if key in sections and "name" not in known:
         return f" '{written_key(key)}' belongs at the left margin, outside every section."
     for section, schema in sections.items():

@@ -33,7 +33,7 @@ def implied_basis(lattice: Lattice, composition: Mapping[str, float]) -> list[Si
     if len(lattice.basis) != len(composition):
         kind = "an element" if len(lattice.basis) == 1 else "a compound of two elements"
         raise UnreadableError(
-            f"this lattice says where the atoms are only for {kind}; add 'atoms' with element, position and occupancy"
+            f"the name says where the atoms are only for {kind}; add 'atoms' with element, position and occupancy"
         )
     return [
         Site(element, tuple(map(float, point)), 1.0)

@@ -12,7 +12,7 @@ from collections.abc import Iterator
 import yaml
 
 from sheetgen.faults import FaultLog, Place
-from sheetgen.records.files import place_of
+from sheetgen.records.files import HIDDEN, place_of
 from sheetgen.records.nodes import Entry, Listing, Node, Scalar, Table
 from sheetgen.records.spelling import canonical_key
 from sheetgen.records.unreadable import shown
@@ -32,7 +32,7 @@ class _GivenUpError(Exception):
 
 
 def read_tree(text: str, file: str, log: FaultLog, example: str = "name: Copper") -> Table | None:
-    """The one mapping that a YAML text holds, or None with at least one fault logged; `example` is a line of such a file.
+    """The one mapping that a YAML text holds, or None with a fault logged; `example` is a line of such a file.
 
     Bounded: a tree that is deeper or larger than a record needs is a fault, and so is every alias and tag.
     """
@@ -43,7 +43,7 @@ def read_tree(text: str, file: str, log: FaultLog, example: str = "name: Copper"
     try:
         root = builder.document(iter(yaml.parse(text, Loader=_LOADER)))
     except yaml.MarkedYAMLError as error:
-        builder.fault(error.problem_mark or error.context_mark, _syntax_message(error))
+        builder.fault(_syntax_mark(error), _syntax_message(error))
     except yaml.YAMLError as error:
         builder.fault(None, f"not readable as YAML: {' '.join(str(error).split())}.")
     except _GivenUpError:
@@ -94,13 +94,21 @@ class _Builder:
         if event.tag is not None:
             self.fault(place, f"the tag {shown(event.tag)} is not read; remove it, plain text and numbers need none.")
         if isinstance(event, yaml.ScalarEvent):
-            plain = event.implicit[0]
-            if plain and (message := surprise(event.value)):
-                self.fault(place, message)
-            return Scalar(event.value, plain, place)
+            return self._scalar(event, place)
         if isinstance(event, yaml.SequenceStartEvent):
             return self._listing(place, events, depth)
         return self._table(place, events, depth)
+
+    def _scalar(self, event: yaml.ScalarEvent, place: Place) -> Scalar:
+        plain = event.implicit[0]
+        if plain and (message := surprise(event.value)):
+            self.fault(place, message)
+        # Quotes can spell what the file itself must not hold: "\x00".
+        if not plain and (hidden := HIDDEN.search(event.value)):
+            self.fault(
+                place, f"the text spells the hidden character U+{ord(hidden[0]):04X}; expected visible text. Delete it."
+            )
+        return Scalar(event.value, plain, place)
 
     def _check_bounds(self, place: Place, depth: int) -> None:
         self.nodes += 1
@@ -146,13 +154,20 @@ class _Builder:
 
 
 _SYNTAX_MENDS = {
-    "mapping values are not allowed": "A text with ': ' in it needs quotes",
+    "mapping values are not allowed": "A text with ': ' in it needs quotes, and a key in the line above its colon",
     "did not find expected key": "Check the indentation, and that brackets and quotes are closed",
     "did not find expected ',' or": "Close the bracket, and put quotes around a text that holds a comma or a bracket",
     "could not find expected ':'": "A key needs ': ' after it, and the keys of one mapping start in the same column",
     "cannot start any token": "Put quotes around a text that begins with a special character",
     "unexpected end of stream": "Close the quotes or the bracket",
 }
+
+
+def _syntax_mark(error: yaml.MarkedYAMLError) -> yaml.Mark | None:
+    """Where to look: at the beginning of what was left open, else where the parser stumbled."""
+    problem = error.problem or ""
+    left_open = "end of stream" in problem or "expected ',' or" in problem
+    return (left_open and error.context_mark) or error.problem_mark or error.context_mark
 
 
 def _syntax_message(error: yaml.MarkedYAMLError) -> str:

@@ -195,7 +195,7 @@ def _check_range(si: float, unit_text: str, unit: Unit, measure: Measure, text: 
 
 def _bound(si: float, unit_text: str, unit: Unit) -> str:
     number = f"{(si - unit.offset) / unit.factor:.6g}"
-    return number if unit_text == "1" else f"{number} {unit_text}"
+    return number if unit_text == "1" else f"{number}{unit_text}" if unit_text == "°" else f"{number} {unit_text}"
 
 
 def _unknown_source(key: str, sources: Mapping[str, Source]) -> str:

@@ -61,7 +61,10 @@ def test_counts_agree_with_ase(parts):
         ("Cu0", "formula 'Cu0' counts an element or a bracket 0 times; leave it out"),
         ("()", "formula '()' names no element; expected such as GaAs"),
         ("((((((Cu))))))", "formula '((((((Cu))))))' has brackets nested deeper than 5"),
-        ("((((Cu9999)9999)9999)9999)", "formula '((((Cu9999)9999)9999)9999)' counts more than 10000 atoms of one element"),
+        (
+            "((((Cu9999)9999)9999)9999)",
+            "formula '((((Cu9999)9999)9999)9999)' counts more than 10000 atoms of one element",
+        ),
     ],
 )
 def test_complaint_says_what_was_found_and_expected(formula, message):
