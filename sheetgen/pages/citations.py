@@ -2,10 +2,15 @@
 
 from __future__ import annotations
 
+import re
+import textwrap
 from collections.abc import Iterable
 from dataclasses import dataclass
+from functools import cache
+from importlib import resources
+from pathlib import Path
 from typing import Any
-from urllib.parse import urlsplit
+from urllib.parse import quote, urlsplit
 
 from markupsafe import Markup
 
@@ -27,15 +32,58 @@ def citation(key: str, sources: dict[str, Any]) -> Citation:
     if source is None:
         return Citation(key, key, False)
     names = [_family(author) for author in source.authors]
-    who = {0: source.title or key, 1: names[0] if names else ""}.get(len(names))
+    who = {0: _short_title(source.title) or key, 1: names[0] if names else ""}.get(len(names))
     if who is None:
         who = " & ".join(names) if len(names) == 2 else f"{names[0]} et al."
     return Citation(key, f"{who} {source.year}".strip(), True)
 
 
+def _short_title(title: str) -> str:
+    """A title without its subtitle, its first words where it is still long."""
+    return textwrap.shorten(re.split(r": | \(", title)[0], 36, placeholder="…")
+
+
 def _family(author: str) -> str:
     """The family name: what stands before a comma, else the last word."""
     return author.partition(",")[0].strip() if "," in author else author.split()[-1] if author.split() else author
+
+
+@cache
+def methods_sources() -> dict[str, Any]:
+    """The publications that the formulas are taken from."""
+    from sheetgen.faults import FaultLog
+    from sheetgen.records.sources import read_sources
+
+    path = Path(str(resources.files("sheetgen.quantities") / "methods.bib"))
+    log = FaultLog()
+    found = read_sources(path.read_text(encoding="utf-8"), path, log)
+    log.raise_if_any()
+    return found
+
+
+def all_sources(handbook: Any) -> dict[str, Any]:
+    """The handbook's sources and those of the methods, each key once, the handbook's own first."""
+    return {**handbook.sources, **{k: s for k, s in methods_sources().items() if k not in handbook.sources}}
+
+
+_KEY = re.compile(r"[\w:.+/-]*\w")
+
+
+def keys_in(text: str, sources: dict[str, Any]) -> list[str]:
+    """The keys of sources that a text names, in order."""
+    return [word for word in _KEY.findall(text) if word in sources]
+
+
+def linked(text: str, sources: dict[str, Any], root: str) -> Markup:
+    """A text that names sources by their keys, each key replaced by a link with authors and year."""
+    parts, position = [], 0
+    for found in _KEY.finditer(text):
+        if found[0] in sources:
+            label = citation(found[0], sources).label
+            parts.append(Markup.escape(text[position : found.start()]))
+            parts.append(Markup('<a href="{}sources.html#{}">{}</a>').format(root, quote(found[0]), label))
+            position = found.end()
+    return Markup("").join([*parts, Markup.escape(text[position:])])
 
 
 def safe_link(link: str | None) -> str | None:
@@ -66,7 +114,7 @@ def supplied_by(sheets: Iterable[Any]) -> dict[str, list[Supplied]]:
     for sheet in sheets:
         names = tuple(specimen.name for specimen in sheet.record.specimens)
         for identifier, given in sheet.data["inputs"].items():
-            number = numbers.printed(given["value"], given.get("standard_uncertainty"))
+            number = numbers.stated(given["value"], given.get("standard_uncertainty"))
             value = numbers.with_unit(number, given["unit"])
             for key in given.get("sources", ()):
                 label = words.input_words(identifier, names)

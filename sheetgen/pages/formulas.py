@@ -63,6 +63,8 @@ def _tidy(element: ElementTree.Element, latex: str) -> None:
     element.attrib = {key: value for key, value in element.attrib.items() if key in _ATTRIBUTES}
     if element.text:
         element.text = element.text.translate(_REPLACED)
+        if element.text == "/":  # set solid, as print does: 1/3, not 1 / 3
+            element.attrib |= {"lspace": "0.06em", "rspace": "0.06em"}
         if "\\" in element.text:
             raise FormulaError(f"the formula {latex!r} uses {element.text}, which is not a known command")
 

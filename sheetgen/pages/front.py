@@ -95,13 +95,13 @@ def electrons(record: Any) -> Markup:
     if stated.valence:
         return Markup(", ").join(
             (Markup.escape(element) + "\u00a0" if len(stated.valence) > 1 else Markup(""))
-            + numbers.printed(value.value, value.standard_uncertainty).html
+            + numbers.stated(value.value, value.standard_uncertainty).html
             for element, value in stated.valence.items()
         )
     if stated.density is None:
         return Markup("")
     return numbers.with_unit(
-        numbers.printed(stated.density.value, stated.density.standard_uncertainty), stated.density.unit
+        numbers.stated(stated.density.value, stated.density.standard_uncertainty), stated.density.unit
     )
 
 

@@ -7,7 +7,7 @@ import hashlib
 from collections.abc import Iterator, Mapping, Sequence
 from typing import Any
 
-from . import front, quantity, reference, words
+from . import citations, front, quantity, reference, words
 from .environment import Press, template_folder
 from .sheet import SheetPage
 
@@ -41,10 +41,10 @@ class _Layout:
     def __init__(self, handbook: Any):
         self.handbook = handbook
         self.press = Press()
+        self.known_sources = citations.all_sources(handbook)
         imprint = handbook.imprint
         self.shared = {
             "imprint": imprint,
-            "sources_listed": handbook.sources,
             "language": words.language(imprint.language),
             "paper": PAPERS.get(imprint.paper.casefold(), "A4"),
         }
@@ -64,9 +64,16 @@ class _Layout:
 
     def page(self, template: str, root: str, running_head: str = "", **context: Any) -> bytes:
         """One page; `root` leads from it to the top of the site. Its running head on paper is a CSS string."""
+        known = self.known_sources
         head_style = f'@page{{@top-right{{content:"{running_head}"}}}}' if running_head else ""
         return self.press.render(
-            template, root=root, head_style=head_style, policy=policy(head_style), **self.shared, **context
+            template,
+            root=root,
+            head_style=head_style,
+            policy=policy(head_style),
+            with_links=lambda text: citations.linked(text, known, root),
+            **self.shared,
+            **context,
         )
 
 

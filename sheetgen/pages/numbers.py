@@ -12,6 +12,7 @@ import statistics
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from decimal import ROUND_HALF_EVEN, Context, Decimal
+from functools import cache
 
 from markupsafe import Markup
 
@@ -50,7 +51,7 @@ class Printed:
     def html(self) -> Markup:
         """The number with a real superscript."""
         uncertainty = f'<span class="u">({self.uncertainty})</span>' if self.uncertainty else ""
-        power = f"{NARROW}{TIMES}{NARROW}10<sup>{signed(self.exponent)}</sup>" if self.exponent else ""
+        power = f"<wbr>{NARROW}{TIMES}{NARROW}10<sup>{signed(self.exponent)}</sup>" if self.exponent else ""
         return Markup(self.digits + uncertainty + power)
 
 
@@ -79,6 +80,18 @@ def printed(value: float, uncertainty: float | None = None, whole: bool = False)
     if spread is None:
         return _without_uncertainty(exact)
     return _concise(exact, spread)
+
+
+def stated(value: float, uncertainty: float | None = None) -> Printed:
+    """A number as its author gave it: all its digits, and a one-digit uncertainty left at one digit."""
+    exact = Decimal(repr(float(value)))
+    if not uncertainty:
+        return _without_uncertainty(exact, significant=RELIABLE)
+    spread = _two_digits(uncertainty, exact)
+    if spread is None or not math.isfinite(value):
+        return printed(value, uncertainty)
+    last = min(int(number.normalize().as_tuple().exponent) for number in (exact, spread))
+    return _concise(exact, _to_place(spread, max(last, int(spread.as_tuple().exponent))))
 
 
 def _two_digits(uncertainty: float, value: Decimal) -> Decimal | None:
@@ -110,10 +123,10 @@ def _concise(value: Decimal, spread: Decimal) -> Printed:
     return Printed(digits, str(int(spread.scaleb(-place))), exponent)
 
 
-def _without_uncertainty(value: Decimal) -> Printed:
+def _without_uncertainty(value: Decimal, significant: int = SIGNIFICANT) -> Printed:
     if not value:
         return Printed("0")
-    rounded = _to_place(value, value.adjusted() - SIGNIFICANT + 1)
+    rounded = _to_place(value, value.adjusted() - significant + 1)
     exponent = 0 if rounded.adjusted() in PLAIN_MAGNITUDES else rounded.adjusted()
     return Printed(_grouped(rounded.scaleb(-exponent).normalize()), "", exponent)
 
@@ -196,6 +209,7 @@ def unit_factors(text: str) -> list[tuple[str, int]] | None:
     return factors if depth == 0 else None
 
 
+@cache
 def unit(text: str) -> Markup:
     """A unit with superscripts and no-break spaces; "" for the unit one; a unit not understood as it was written."""
     if text.strip() in ("", "1"):
@@ -210,6 +224,7 @@ def _power_html(power: int) -> Markup:
     return Markup("") if power == 1 else Markup(f"<sup>{signed(power)}</sup>")
 
 
+@cache
 def unit_text(text: str) -> str:
     """The unit as plain Unicode, for titles and alternative texts."""
     if text.strip() in ("", "1"):
@@ -222,14 +237,21 @@ def unit_text(text: str) -> str:
 
 def with_unit(number: Printed, text: str) -> Markup:
     """Number and unit, held together by a no-break space; a percent sign and a degree follow the same rule."""
-    return number.html + (Markup(NARROW) + unit(text) if unit(text) else Markup(""))
+    shown = unit(text)
+    return Markup(f"{number.html}{NARROW}{shown}") if shown else number.html
 
 
 def converted(value: float, uncertainty: float | None, unit_from: str, unit_to: str) -> tuple[float, float | None]:
     """The same quantity in another unit of its kind."""
     if unit_from == unit_to:
         return value, uncertainty
-    from sheetgen.records import units  # loads a units library, which most pages never need
-
-    factor = units.si_factor(unit_from) / units.si_factor(unit_to)
+    factor = si_factor(unit_from) / si_factor(unit_to)
     return value * factor, None if uncertainty is None else uncertainty * factor
+
+
+@cache
+def si_factor(unit: str) -> float:
+    """How many of the SI's own units one of these is."""
+    from sheetgen.records.units import si_factor as of_records  # reached by pages that convert, not by every import
+
+    return of_records(unit)

@@ -74,7 +74,25 @@ def _use(sheet: Any, id: str) -> tuple[str, dict[str, Any]]:
 def sources(handbook: Any) -> dict[str, Any]:
     """Every source with the values that it supplies; unused ones are listed too."""
     supplied = citations.supplied_by(handbook.sheets)
+    used = _methods_by_source(handbook)
     listed = [
-        (source, citations.safe_link(source.link), supplied.get(key, [])) for key, source in handbook.sources.items()
+        {
+            "source": source,
+            "link": citations.safe_link(source.link),
+            "supplied": supplied.get(key, []),
+            "methods": used.get(key, []),
+        }
+        for key, source in citations.all_sources(handbook).items()
     ]
-    return {"sources": sorted(listed, key=lambda item: (item[0].text.casefold(), item[0].key))}
+    return {"sources": sorted(listed, key=lambda item: (item["source"].text.casefold(), item["source"].key))}
+
+
+def _methods_by_source(handbook: Any) -> dict[str, list[Any]]:
+    """Source key → the quantities whose formulas are taken from it."""
+    known = citations.all_sources(handbook)
+    used: dict[str, dict[str, Any]] = {}
+    for definition in handbook.registry.all:
+        if definition.published:
+            for key in citations.keys_in(definition.source, known):
+                used.setdefault(key, {}).setdefault(definition.id, definition)
+    return {key: list(found.values()) for key, found in used.items()}

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 import itertools
 import re
-from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass, replace
 from typing import Any
 
 from markupsafe import Markup
@@ -19,13 +19,12 @@ KEY_NUMBERS = (
 )  # fmt: skip
 # A table wider than this breaks on paper: its columns are set in as many bands as needed.
 COLUMNS = 6
+OPTICAL_COLUMNS = 10
 _OPTICAL = re.compile(r"measured\.refractive_index\.\d+\.")
-_GROUPS = (
-    ("structure.", "Structure"),
-    ("electrons.", "Electrons"),
-    ("measured.", "Measured"),
-    ("specimens.", "Specimens"),
-)
+# The values of specimens stand with the specimens.
+_GROUPS = (("structure.", "Structure"), ("electrons.", "Electrons"), ("measured.", "Measured"))
+# What a form is measured by: a number that needs another of these was never meant for it.
+_DIMENSIONS = {"film": "thickness", "wire": "diameter", "particle": "diameter", "cube": "edge"}
 
 
 @dataclass(frozen=True)
@@ -58,6 +57,7 @@ class Section:
 
     title: str
     lines: tuple[Line, ...]
+    origins: str
     bands: tuple[Band, ...]
 
 
@@ -94,19 +94,22 @@ class SheetPage:
             "lattice": words.lattice_words(self.record.crystal.lattice) if self.record.crystal else "",
             "answer": self.sheet.answer,
             "unchecked": self.unchecked(),
+            "key_ids": KEY_NUMBERS,
             "key_numbers": [line for id in KEY_NUMBERS for line in self.lines([id])],
             "cautions": [
                 (caution, [(c, hazards.statement(c)) for c in caution.hazard]) for caution in self.record.cautions
             ],
             "input_groups": self.input_groups(),
             "recalled": sum(bool(given.get("recalled")) for given in self.data["inputs"].values()),
-            "optical": self.optical_points(),
+            "optical": self.optical_bands(),
+            "optical_sources": self.optical_sources(),
+            "written": _written,
             "sections": list(self.sections()),
             "confrontations": self.confrontations(),
             "checks": self.check_groups(),
             "specimens": self.specimens(),
             "figures": [(figure, figure_size(figure.svg)) for figure in self.figures],
-            "missing": self.missing(),
+            "missing": self.missing(self.sheet.missing),
             "cited": self.cited(),
             "json_ld": metadata.material(self.sheet, self.handbook, self.definitions),
             "running_head": words.css_string(f"{self.record.name} ({self.record.formula})"),
@@ -117,7 +120,8 @@ class SheetPage:
     def unchecked(self) -> list[Any]:
         """Definitions of the numbers that the answer leaves out because nothing measured is at hand."""
         answer = self.sheet.answer
-        named = {line.quantity for part in (answer.use, answer.scale, answer.avoid) for line in part}
+        parts = (answer.use, answer.scale, answer.avoid, answer.undecided)
+        named = {line.quantity for part in parts for line in part}
         return [
             definition
             for id, definition in self.definitions.items()
@@ -141,7 +145,7 @@ class SheetPage:
         """One input with its temperature, sources and note."""
         stated = self.data["inputs"][id]
         value = self.record.inputs.get(id)
-        number = numbers.printed(stated["value"], stated.get("standard_uncertainty"))
+        number = numbers.stated(stated["value"], stated.get("standard_uncertainty"))
         at = {"temperature": stated["temperature"]} if stated.get("temperature") is not None else {}
         return Given(
             words.input_words(id.partition("@")[0], self.specimen_names),
@@ -153,14 +157,18 @@ class SheetPage:
             value.note if value else "",
         )
 
-    def optical_points(self) -> list[tuple[Markup, Markup, Markup, tuple[citations.Citation, ...]]]:
-        """Photon energy, n, k and sources of each measured refractive index."""
-        return [
-            (*(_written(value) for value in (point.photon_energy, point.n, point.k)), self.cite(point.n.sources))
-            for point in self.record.optical
-        ]
+    def optical_bands(self) -> list[Sequence[Any]]:
+        """The measured refractive indices, as many side by side as fit."""
+        points = self.record.optical
+        return [points[start : start + OPTICAL_COLUMNS] for start in range(0, len(points), OPTICAL_COLUMNS)]
 
-    def cite(self, keys: Sequence[str]) -> tuple[citations.Citation, ...]:
+    def optical_sources(self) -> tuple[citations.Citation, ...]:
+        """Where the refractive indices come from."""
+        return self.cite(
+            dict.fromkeys(key for point in self.record.optical for key in point.n.sources + point.k.sources)
+        )
+
+    def cite(self, keys: Iterable[str]) -> tuple[citations.Citation, ...]:
         """Short citations of some sources."""
         return tuple(citations.citation(key, self.handbook.sources) for key in keys)
 
@@ -190,7 +198,8 @@ class SheetPage:
         for title, definitions in by_section.items():
             single = [d.id for d in definitions if not d.listed_by]
             listed = [d for d in definitions if d.listed_by]
-            yield Section(title, tuple(self.lines(single)), tuple(self.bands(listed)))
+            lines = tuple(self.lines(single))
+            yield Section(title, lines, origins(lines), tuple(self.bands(listed)))
 
     def bands(self, definitions: Sequence[Any]) -> Iterator[Band]:
         """The lists of a section, those over the same conditions in one table."""
@@ -231,46 +240,75 @@ class SheetPage:
     # --- standing
 
     def confrontations(self) -> list[dict[str, Any]]:
-        """Model against measurement, each number printed."""
+        """Model against measurement by quantity; what the ratio means and the sources stand once under their rows."""
+        groups: dict[str, list[Any]] = {}
+        for found in self.sheet.confrontations:
+            groups.setdefault(found.quantity, []).append(found)
         return [
             {
-                "id": found.quantity,
-                "title": found.title,
-                "at": entries.where(found),
-                "model": _maybe(found.model),
-                "measured": _maybe(found.measured),
-                "unit": numbers.unit(found.unit),
-                "ratio": _maybe(found.ratio, found.ratio_uncertainty),
-                "standing": found.standing,
-                "meaning": found.meaning,
-                "reason": found.reason,
-                "sources": self.cite(found.sources),
+                "first": found[0],
+                "rows": [self.comparison(one) for one in found],
+                "remarks": list(dict.fromkeys(one.meaning for one in found if one.meaning)),
+                "recalled": any(one.recalled for one in found),
+                "sources": self.cite(dict.fromkeys(key for one in found for key in one.sources)),
             }
-            for found in self.sheet.confrontations
+            for found in groups.values()
         ]
+
+    def comparison(self, found: Any) -> dict[str, Any]:
+        """One measurement beside the model, each number printed; a reason that only names the ratio is left out."""
+        return {
+            "at": entries.where(found),
+            "model": self.compared(found, found.model, found.model_uncertainty),
+            "measured": self.compared(found, found.measured, found.measured_uncertainty),
+            "unit": numbers.unit(self.preference.of(found.quantity, found.unit)),
+            "ratio": None if found.ratio is None else _ratio(found.ratio, found.ratio_uncertainty),
+            "standing": found.standing,
+            "reason": found.reason if found.reason != found.ratio_name else "",
+        }
+
+    def compared(self, found: Any, value: float | None, uncertainty: float | None) -> Markup | None:
+        """One side of a confrontation, from SI to the unit on the page."""
+        if value is None:
+            return None
+        unit = self.preference.of(found.quantity, found.unit)
+        factor = numbers.si_factor(unit)
+        return numbers.printed(value / factor, uncertainty / factor if uncertainty else None).html
 
     def check_groups(self) -> list[dict[str, Any]]:
         """The assumptions with all their evaluations; the standing of a group is its worst."""
-        groups: dict[str, list[Any]] = {}
+        groups: dict[tuple[str, str], list[Any]] = {}
         for check in self.sheet.checks:
-            groups.setdefault(check.id, []).append(check)
+            groups.setdefault((check.id, check.indicator), []).append(check)
         order = list(words.CONDITIONS)
-        indicators = {assumption.id: assumption.formula for assumption in self.handbook.registry.assumptions}
+        declared = {
+            (assumption.id, assumption.indicator): assumption for assumption in self.handbook.registry.assumptions
+        }
         return [
             {
                 "id": id,
                 "first": checks[0],
-                "indicator": indicators.get(id, ""),
+                "formula": declared[id, indicator].formula if (id, indicator) in declared else "",
                 "standing": max((check.standing for check in checks), key=order.index),
-                "evaluations": [
-                    (entries.where(c), _maybe(c.value), _maybe(c.bound), c.standing, c.reason) for c in checks
-                ],
+                "evaluations": _each_once([self.evaluation(check) for check in checks]),
                 "covers": [
                     self.definitions[q] for q in checks[0].covers if q in self.definitions and self.sheet.entries(q)
                 ],
             }
-            for id, checks in groups.items()
+            for (id, indicator), checks in groups.items()
         ]
+
+    def evaluation(self, check: Any) -> dict[str, Any]:
+        """One evaluation of an assumption, printed: three digits are enough to see how it stands."""
+        where = entries.where({check.axis: check.at}) if check.axis else Markup("")
+        own = self.definitions.get(check.quantity)
+        return {
+            "at": where,
+            "own": own.title if own and where else "",
+            "value": _three_digits(check.value),
+            "bound": None if check.bound is None else numbers.printed(check.bound).html,
+            "standing": check.standing,
+        }
 
     def specimens(self) -> list[dict[str, Any]]:
         """The group's own specimens with what was stated of them and what follows."""
@@ -280,6 +318,7 @@ class SheetPage:
             {
                 "specimen": specimen,
                 "given": self.specimen_inputs(specimen),
+                "missing": self.missing(self.missing_of(specimen)),
                 "lines": [
                     self.line(definitions[id], entry)
                     for id, entry in derived.get(specimen.name, {}).items()
@@ -289,24 +328,49 @@ class SheetPage:
             for specimen in self.record.specimens
         ]
 
-    def specimen_inputs(self, specimen: Any) -> list[tuple[str, Markup]]:
+    def specimen_inputs(self, specimen: Any) -> list[Given]:
         """What the record says of a specimen."""
-        names = ("thickness", "diameter", "edge", "grain_size", "specularity", "grain_reflection", "resistivity")
-        stated = [(name, getattr(specimen, name)) for name in names]
-        return [(name.replace("_", " "), _written(value)) for name, value in stated if value is not None]
+        number = self.record.specimens.index(specimen) + 1
+        prefix = f"specimens.{number}."
+        found = [self.given(id) for id in self.data["inputs"] if id.startswith(prefix)]
+        own_name = f" of {specimen.name}"
+        return [replace(given, label=given.label.removesuffix(own_name)) for given in found]
 
-    def missing(self) -> list[tuple[str, list[Any]]]:
+    def missing_of(self, specimen: Any) -> dict[str, str]:
+        """What is absent for a specimen, other forms' quantities aside."""
+        foreign = set(_DIMENSIONS.values()) - {_DIMENSIONS.get(specimen.form)}
+        absent = self.sheet.specimen_missing.get(specimen.name, {})
+        return {id: why for id, why in absent.items() if not any(word in why for word in foreign)}
+
+    def missing(self, absent: dict[str, str]) -> list[tuple[str, list[Any]]]:
         """What is absent and why, quantities with the same reason together."""
         reasons: dict[str, list[Any]] = {}
-        known = self.handbook.registry.published()
-        for id, reason in self.sheet.missing.items():
-            reasons.setdefault(reason, []).append(self.definitions.get(id) or known.get(id) or id)
+        for id, reason in absent.items():
+            reasons.setdefault(reason, []).append(self.handbook.registry[id])
         return list(reasons.items())
 
     def cited(self) -> list[Any]:
         """The sources that the sheet's values name, in the order of the list of sources."""
         keys = {key for given in self.data["inputs"].values() for key in given.get("sources", ())}
         return [source for key, source in self.handbook.sources.items() if key in keys]
+
+
+def _each_once(evaluations: list[dict[str, Any]]) -> list[dict[str, Any]]:
+    """Evaluations without repeats, as where a measurement was taken at a tabulated photon energy."""
+    return list({tuple(one.values()): one for one in evaluations}.values())
+
+
+def origins(lines: Sequence[Line]) -> str:
+    """Where the uncertainties of some lines come from, in one sentence: what most share, then the exceptions."""
+    by_origin: dict[str, list[str]] = {}
+    for line in lines:
+        if line.origin:
+            by_origin.setdefault(line.origin.rpartition(",")[0], []).append(words.lower_first(line.title))
+    if not by_origin:
+        return ""
+    most = max(by_origin, key=lambda origin: len(by_origin[origin]))
+    exceptions = [f"of {words.joined(titles)} from {origin}" for origin, titles in by_origin.items() if origin != most]
+    return "; ".join([f"Uncertainties come mostly from {most}", *exceptions]) + "."
 
 
 def _fitting(registry: Any, dimension: int) -> dict[str, Any]:
@@ -329,15 +393,19 @@ def _conditions(heads: Sequence[Markup]) -> tuple[tuple[Markup, int], ...]:
     return tuple(found)
 
 
-def _maybe(value: float | None, uncertainty: float | None = None) -> Markup | None:
-    return None if value is None else numbers.printed(value, uncertainty).html
+def _ratio(ratio: float, uncertainty: float | None) -> Markup:
+    return numbers.printed(ratio, uncertainty).html if uncertainty else _three_digits(ratio)
+
+
+def _three_digits(value: float) -> Markup:
+    return numbers.printed(float(f"{value:.3g}")).html
 
 
 def _written(value: Any) -> Markup:
-    return numbers.with_unit(numbers.printed(value.value, value.standard_uncertainty), value.unit)
+    return numbers.with_unit(numbers.stated(value.value, value.standard_uncertainty), value.unit)
 
 
 def figure_size(svg: bytes) -> tuple[int, int] | None:
-    """Width and height of a figure in its own units, so that the page keeps its place while it loads."""
-    found = re.search(rb'viewBox="[\d.-]+ [\d.-]+ ([\d.]+) ([\d.]+)"', svg[:2000])
-    return (round(float(found[1])), round(float(found[2]))) if found else None
+    """Width and height of a figure in CSS pixels, so that the page keeps its place while it loads."""
+    found = re.search(rb'<svg[^>]* width="([\d.]+)mm" height="([\d.]+)mm"', svg[:2000])
+    return tuple(round(float(size) * 96 / 25.4) for size in found.groups()) if found else None
