@@ -28,8 +28,7 @@ def resistivity_from_debye(
 
     The two parts add (Matthiessen's rule). NaN where the reference temperature is zero.
     """
-    with np.errstate(divide="ignore", invalid="ignore"):
-        growth = bloch_grueneisen_shape(temperature, debye_temperature) / bloch_grueneisen_shape(
-            reference_temperature, debye_temperature
-        )
+    at_reference = bloch_grueneisen_shape(reference_temperature, debye_temperature)
+    at_reference = np.where(at_reference > 0, at_reference, np.nan)
+    growth = bloch_grueneisen_shape(temperature, debye_temperature) / at_reference
     return residual + (reference_resistivity - residual) * growth

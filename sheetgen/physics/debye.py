@@ -8,8 +8,8 @@ from sheetgen.physics.occupation import heat_capacity_ratio
 from sheetgen.physics.phonon_integrals import scaled_bose_integral, scaled_transport_integral
 from sheetgen.physics.quadrature import bracketed_root
 
-# C_V/T of the Debye model is largest here, in units of the Debye temperature; below it, C_V/T only rises.
-_STEEPEST = 0.28
+# C_V/T of the Debye model rises up to here, in units of the Debye temperature, and falls from 0.27995 on.
+_STEEPEST = 0.2799
 # Where the crossing is not below that temperature it is looked for on a grid this fine in ln T.
 _STEP = 0.02
 
@@ -32,7 +32,7 @@ def debye_heat_ratio(temperature: np.ndarray, debye_temperature: np.ndarray) -> 
 
 def ratio_of(debye_temperature: np.ndarray, temperature: np.ndarray) -> np.ndarray:
     """θ/T, infinite at T = 0."""
-    with np.errstate(divide="ignore", invalid="ignore"):
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
         return np.asarray(debye_temperature, float) / np.asarray(temperature, float)
 
 

@@ -46,8 +46,7 @@ def plasma_edge(plasma_frequency: np.ndarray, relaxation_time: np.ndarray) -> np
 
     The plasma frequency is the screened one, (ne²/ε₀ε_b m)^{1/2}.
     """
-    plasma_frequency = np.asarray(plasma_frequency, float)
-    damping = 1 / np.asarray(relaxation_time, float)
-    # The product of sum and difference keeps its accuracy where the two are nearly equal.
-    square = (plasma_frequency - damping) * (plasma_frequency + damping)
-    return np.sqrt(np.where(square > 0, square, np.nan))
+    turns = np.asarray(plasma_frequency, float) * relaxation_time
+    # The product of difference and sum keeps its accuracy where ω_pτ is nearly 1.
+    square = (turns - 1) * (turns + 1)
+    return np.sqrt(np.where(turns > 1, square, np.nan)) / relaxation_time

@@ -33,7 +33,7 @@ def fermi_integral(order: float, eta: np.ndarray) -> np.ndarray:
     """
     eta = np.asarray(eta, float)
     if order == 0:
-        return np.logaddexp(0.0, eta)
+        return _zeroth_order(eta)
     if order == 1:
         return _first_order(eta)
     _check(order)
@@ -46,7 +46,7 @@ def fermi_integral_slope(order: float, eta: np.ndarray) -> np.ndarray:
     if order == 0:
         return 1 / (1 + np.exp(-np.maximum(eta, -700.0)))
     if order == 1:
-        return np.logaddexp(0.0, eta)
+        return _zeroth_order(eta)
     _check(order)
     return _by_range(
         eta, lambda low: _trapezoidal(order, low, slope=True), lambda high: _degenerate(order - 1, high)
@@ -157,6 +157,10 @@ def occupations(nodes: np.ndarray, eta: np.ndarray) -> tuple[np.ndarray, np.ndar
     """Occupied and empty parts f and 1 − f, (..., nodes), each with its own relative accuracy."""
     exponent = np.clip(nodes**2 - eta[..., None], -700.0, 700.0)
     return 1 / (1 + np.exp(exponent)), 1 / (1 + np.exp(-exponent))
+
+
+def _zeroth_order(eta: np.ndarray) -> np.ndarray:
+    return np.maximum(eta, 0.0) + np.log1p(np.exp(-np.abs(eta)))
 
 
 def _first_order(eta: np.ndarray) -> np.ndarray:

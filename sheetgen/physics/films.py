@@ -90,10 +90,15 @@ def film_factor(kappa: np.ndarray, alpha: np.ndarray, specularity: np.ndarray) -
     return (1 / conductance).reshape(arrays[0].shape)[()]
 
 
+def explained_ratios(kappa: np.ndarray, alpha: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
+    """The least and the largest ρ/ρ₀ that a specularity can explain: mirror-like and diffuse surfaces."""
+    return film_factor(kappa, alpha, 1.0), film_factor(kappa, alpha, 0.0)
+
+
 def explaining_specularity(ratio: np.ndarray, kappa: np.ndarray, alpha: np.ndarray) -> np.ndarray:
     """The specularity 0 ≤ p ≤ 1 at which film_factor equals the measured ratio; NaN where none does.
 
-    The least ratio that a specularity explains is grain_factor(α), the largest film_factor(κ, α, 0).
+    Which of the two bounds a ratio misses, explained_ratios tells.
     """
     ratio, kappa, alpha = np.broadcast_arrays(*(np.asarray(a, float) for a in (ratio, kappa, alpha)))
     flat = [array.ravel() for array in (ratio, kappa, alpha)]
