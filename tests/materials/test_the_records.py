@@ -41,7 +41,7 @@ def resistivities(record):
     return record.measured.get("resistivity", ()) or record.measured.get("sheet_resistance", ())
 
 
-def test_every_material_of_the_plan_has_a_record():
+def test_there_is_one_record_for_each_of_these():
     assert set(RECORDS) == {*SIMPLE, *TRANSITION, *COMPOUNDS, "mercury-liquid"}
 
 
