@@ -20,25 +20,31 @@ FLAGS = [
     "--font-render-hinting=none",
 ]
 
+HERE = ("file:", "data:", "blob:", "http://127.0.0.1:")
+
 
 @contextmanager
 def watched_page(browser, **settings) -> Iterator[tuple]:
     """A page and the list of what goes wrong on it: errors, failed requests, requests to outside."""
     context = browser.new_context(**settings)
     page, troubles = context.new_page(), []
-    page.on("console", lambda said: troubles.append(said.text) if said.type in {"error", "warning"} else None)
+
+    def heard(said) -> None:
+        if said.type in {"error", "warning"}:
+            troubles.append(f"{said.text} ({said.location['url']})")
+
+    def asked(request) -> None:
+        if not request.url.startswith(HERE):
+            troubles.append(f"outside: {request.url}")
+
+    page.on("console", heard)
+    page.on("request", asked)
     page.on("pageerror", lambda error: troubles.append(str(error)))
     page.on("requestfailed", lambda request: troubles.append(f"failed: {request.url}"))
-    page.on("response", lambda answer: troubles.append(f"{answer.status}: {answer.url}") if answer.status >= 400 else 0)
-    page.on("request", lambda request: None if _at_home(request.url) else troubles.append(f"outside: {request.url}"))
     try:
         yield page, troubles
     finally:
         context.close()
-
-
-def _at_home(address: str) -> bool:
-    return address.startswith(("file:", "data:", "blob:", "http://127.0.0.1:"))
 
 
 def pages_of(site: Path) -> list[Path]:
