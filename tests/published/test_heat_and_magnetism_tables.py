@@ -48,7 +48,7 @@ def test_heat_coefficients_of_kittel(temperature, valence, gamma):
     assert heat_coefficient(temperature, valence) == printed(gamma, inputs=half_unit(temperature))
 
 
-# Ashcroft & Mermin (1976), table 2.3 (1e-4 cal mol⁻¹ K⁻²), free-electron column (from memory), and T_F of table 2.1 (read).
+# Ashcroft & Mermin (1976), table 2.3 (1e-4 cal mol⁻¹ K⁻²), free-electron column (memory), and T_F of table 2.1.
 @pytest.mark.parametrize(
     "temperature, valence, gamma",
     [("5.51", 1, "1.8"), ("2.46", 1, "4.0"), ("1.84", 1, "5.3"), ("8.16", 1, "1.2"), ("6.38", 1, "1.5"),
