@@ -119,12 +119,14 @@ def primitive_lattice(positions: np.ndarray, species: Sequence[Hashable]) -> np.
     candidates = groups[rarest] - groups[rarest][0]
     tolerance = SNAP
     while True:
-        kept = [step for step in candidates if _is_translation(groups.values(), step, tolerance)]
+        refined = [_translation(groups.values(), step, tolerance) for step in candidates]
+        kept = np.array([step for step in refined if step is not None])
         # In a group of order N every element is a multiple of 1/N: that makes the translations exact.
         order = len(kept)
-        steps = np.round(np.array(kept) * order).astype(int)
+        steps = np.round(kept * order).astype(int)
         basis = _hermite_rows(np.vstack([steps, order * np.eye(3, dtype=int)]))
-        if round(abs(np.linalg.det(basis))) == order**2:
+        exact = np.abs(kept - steps / order).max() <= tolerance
+        if exact and round(abs(np.linalg.det(basis))) == order**2:
             return basis / order
         tolerance /= 10  # sites that nearly repeat form no group: ask for a closer match
 
@@ -193,13 +195,21 @@ def _shell_starts(distances: np.ndarray, shells: int, tolerance: float) -> list[
     return starts
 
 
-def _is_translation(groups: Iterable[np.ndarray], step: np.ndarray, tolerance: float) -> bool:
-    """Whether the step takes every place of every group to a place of the same group."""
-    return all(
-        np.any(np.all(np.abs(_wrapped(places - place - step)) <= tolerance, axis=1))
-        for places in groups
-        for place in places
-    )
+def _translation(groups: Iterable[np.ndarray], step: np.ndarray, tolerance: float) -> np.ndarray | None:
+    """The step, corrected by the mean misfit, if it takes every place of each group to one of the same group.
+
+    Over the cycles of a translation the misfits of single places add up to zero, so the mean makes it exact.
+    """
+    misfits = []
+    for places in groups:
+        for place in places:
+            offsets = _wrapped(places - place - step)
+            nearest = offsets[np.abs(offsets).max(axis=1).argmin()]
+            if np.abs(nearest).max() > 4 * tolerance:
+                return None
+            misfits.append(nearest)
+    mean = np.mean(misfits, axis=0)
+    return step + mean if np.abs(misfits - mean).max() <= tolerance else None
 
 
 def _hermite_rows(rows: np.ndarray) -> np.ndarray:

@@ -20,12 +20,17 @@ def test_fifth_power_law_at_low_temperatures():
 
 def test_linear_law_at_high_temperatures():
     reduced = np.array([10.0, 1e3, 1e6])
-    assert bloch_grueneisen_shape(reduced, 1.0) == pytest.approx(reduced / 4 * (1 - 1 / (18 * reduced**2)), rel=1e-6)
+    assert bloch_grueneisen_shape(reduced, 1.0) == pytest.approx(
+        reduced / 4 * (1 - 1 / (18 * reduced**2)), rel=1e-6
+    )
     assert bloch_grueneisen_shape(1e6, 1.0) == pytest.approx(2.5e5, rel=1e-13)
 
 
 @given(
-    residual=st.floats(0, 1e-8), reference=st.floats(1.1e-8, 1e-6), debye=st.floats(50, 2000), at=st.floats(20, 1000)
+    residual=st.floats(0, 1e-8),
+    reference=st.floats(1.1e-8, 1e-6),
+    debye=st.floats(50, 2000),
+    at=st.floats(20, 1000),
 )
 def test_curve_passes_through_the_reference_point_and_the_residual(residual, reference, debye, at):
     through = resistivity_from_debye(np.array([0.0, at]), debye, residual, reference, at)

@@ -62,7 +62,9 @@ def test_a_level_at_the_fermi_energy_is_filled(square):
     filled = hard_wall_points(np.array([np.nextafter(radius, 0), radius, np.nextafter(radius, 1e9)]))
     assert np.ptp(filled) == 0
     below = hard_wall_points(radius * (1 - 1e-11))
-    assert filled[0] - below == hard_wall_points(np.sqrt(square + 0.5)) - hard_wall_points(np.sqrt(square - 0.5))
+    assert filled[0] - below == hard_wall_points(np.sqrt(square + 0.5)) - hard_wall_points(
+        np.sqrt(square - 0.5)
+    )
 
 
 def test_the_two_ways_of_counting_agree_where_they_meet():
@@ -87,7 +89,9 @@ def test_bulk_edge_is_the_last_crossing_of_one_percent():
     crossing = np.sqrt(51218)
     just_below = np.sqrt(51218 - 1e-6)
     assert 1 - hard_wall_points(just_below) / weyl_terms(just_below)[0] > 0.01
-    beyond = np.concatenate([crossing + np.linspace(0, 40, 4001), np.sqrt(np.arange(51218, 60000) + 0.999999)])
+    beyond = np.concatenate(
+        [crossing + np.linspace(0, 40, 4001), np.sqrt(np.arange(51218, 60000) + 0.999999)]
+    )
     assert np.abs(1 - hard_wall_points(beyond) / weyl_terms(beyond)[0]).max() <= 0.01
 
 

@@ -34,25 +34,42 @@ def test_heat_capacity_is_the_slope_of_the_energy():
         return t * debye_function(3, 300 / t)
 
     a, b, c, d = (energy(temperature * (1 + n * step)) for n in (-2, -1, 1, 2))
-    assert debye_heat_ratio(temperature, 300) == pytest.approx((a - 8 * b + 8 * c - d) / (12 * step * temperature), rel=1e-9)
+    assert debye_heat_ratio(temperature, 300) == pytest.approx(
+        (a - 8 * b + 8 * c - d) / (12 * step * temperature), rel=1e-9
+    )
 
 
 @given(temperature=st.floats(0.1, 1e4), scale=st.floats(0.01, 100))
 def test_only_the_reduced_temperature_matters(temperature, scale):
-    assert debye_heat_ratio(temperature * scale, 300 * scale) == pytest.approx(debye_heat_ratio(temperature, 300), rel=1e-12)
+    assert debye_heat_ratio(temperature * scale, 300 * scale) == pytest.approx(
+        debye_heat_ratio(temperature, 300), rel=1e-12
+    )
 
 
 def equality(temperature, fermi, debye, electrons, atoms):
-    return electrons * heat_capacity_ratio(temperature / fermi) / (3 * atoms * debye_heat_ratio(temperature, debye)) - 1
+    return (
+        electrons
+        * heat_capacity_ratio(temperature / fermi)
+        / (3 * atoms * debye_heat_ratio(temperature, debye))
+        - 1
+    )
 
 
-METALS = [(81600.0, 343.0, 1, 1), (37500.0, 158.0, 1, 1), (135000.0, 428.0, 3, 1), (18500.0, 40.5, 1, 1), (166000.0, 1440.0, 2, 1)]
+METALS = [
+    (81600.0, 343.0, 1, 1),
+    (37500.0, 158.0, 1, 1),
+    (135000.0, 428.0, 3, 1),
+    (18500.0, 40.5, 1, 1),
+    (166000.0, 1440.0, 2, 1),
+]
 
 
 @pytest.mark.parametrize("metal", METALS)
 def test_crossing_against_a_scalar_root_finder(metal):
     found = heat_crossover(*map(np.array, metal))
-    assert found == pytest.approx(brentq(equality, found / 3, found * 3, args=metal, xtol=1e-13, rtol=1e-14), rel=1e-11)
+    assert found == pytest.approx(
+        brentq(equality, found / 3, found * 3, args=metal, xtol=1e-13, rtol=1e-14), rel=1e-11
+    )
 
 
 def test_crossing_of_metals_is_nearly_that_of_the_limiting_laws():
@@ -95,9 +112,14 @@ def test_crossing_is_smooth_in_its_arguments():
     fermi = 81600 * (1 + 1e-5 * np.arange(-20, 21))
     values = heat_crossover(fermi, 343.0, 1, 1)
     fit = np.polynomial.polynomial.polyfit(np.arange(-20, 21), values, 3)
-    assert np.abs(values - np.polynomial.polynomial.polyval(np.arange(-20, 21), fit)).max() < 2e-14 * values.max()
+    assert (
+        np.abs(values - np.polynomial.polynomial.polyval(np.arange(-20, 21), fit)).max()
+        < 2e-14 * values.max()
+    )
 
 
 @given(scale=st.floats(0.1, 10))
 def test_crossing_scales_with_both_temperatures(scale):
-    assert heat_crossover(8e4 * scale, 300 * scale, 1, 1) == pytest.approx(scale * heat_crossover(8e4, 300, 1, 1), rel=1e-12)
+    assert heat_crossover(8e4 * scale, 300 * scale, 1, 1) == pytest.approx(
+        scale * heat_crossover(8e4, 300, 1, 1), rel=1e-12
+    )

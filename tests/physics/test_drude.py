@@ -46,7 +46,9 @@ def test_kramers_kronig(x):
 
     near = quad(absorbed, 0, 2 * x, weight="cauchy", wvar=x, epsrel=1e-12)[0]
     far = quad(lambda y: absorbed(y) / (y - x), 2 * x, np.inf, epsrel=1e-12)[0]
-    assert permittivity(x / TAU, PLASMA, TAU, 1.0).real - 1 == pytest.approx(2 / np.pi * (near + far), rel=1e-8)
+    assert permittivity(x / TAU, PLASMA, TAU, 1.0).real - 1 == pytest.approx(
+        2 / np.pi * (near + far), rel=1e-8
+    )
 
 
 def test_direct_current_limit_is_the_conductivity():

@@ -32,7 +32,9 @@ def reference(order: float, eta: float):
 
 
 @pytest.mark.parametrize("order", ORDERS)
-@pytest.mark.parametrize("eta", [-50.0, -12.5, -3.0, -0.7, 0.0, 0.3, 1.0, 2.2, 7.0, 20.0, 39.9, 40.1, 75.0, 400.0])
+@pytest.mark.parametrize(
+    "eta", [-50.0, -12.5, -3.0, -0.7, 0.0, 0.3, 1.0, 2.2, 7.0, 20.0, 39.9, 40.1, 75.0, 400.0]
+)
 def test_integral_against_mpmath(order, eta):
     assert abs(fermi_integral(order, eta) / reference(order, eta) - 1) < 1e-12
 

@@ -35,7 +35,9 @@ def electrons_per_area(wavevector, width, degeneracy):
 @given(thickness=st.floats(1e-10, 2e-7), degeneracy=st.sampled_from([2, 4, 12]))
 def test_discs_hold_the_electrons_of_the_film(thickness, degeneracy):
     wavevector = film_fermi_wavevector(DENSITY, thickness, degeneracy)
-    assert electrons_per_area(wavevector, thickness, degeneracy) == pytest.approx(DENSITY * thickness, rel=1e-12)
+    assert electrons_per_area(wavevector, thickness, degeneracy) == pytest.approx(
+        DENSITY * thickness, rel=1e-12
+    )
     subbands = film_subbands(DENSITY, thickness, degeneracy)
     assert np.pi * subbands / thickness < wavevector * (1 + 1e-12)
     assert np.pi * (subbands + 1) / thickness > wavevector * (1 - 1e-12)
@@ -44,7 +46,12 @@ def test_discs_hold_the_electrons_of_the_film(thickness, degeneracy):
 @pytest.mark.parametrize("thickness", [2e-10, 1e-9, 1.234e-8, 4e-8])
 def test_wavevector_against_a_scalar_root_finder(thickness):
     found = film_fermi_wavevector(DENSITY, thickness, 2)
-    root = brentq(lambda k: electrons_per_area(k, thickness, 2) / (DENSITY * thickness) - 1, BULK / 2, BULK * 9, xtol=1e-3)
+    root = brentq(
+        lambda k: electrons_per_area(k, thickness, 2) / (DENSITY * thickness) - 1,
+        BULK / 2,
+        BULK * 9,
+        xtol=1e-3,
+    )
     assert found == pytest.approx(root, rel=1e-12)
     bulk = np.cbrt(3 * np.pi**2 * DENSITY)
     width = thickness + 3 * np.pi / (4 * bulk)
@@ -149,7 +156,9 @@ def test_film_factor_against_graded_panels(kappa, strength, specularity):
     integral = np.pi / 2 * weight @ values @ weight
     f = 1 / grain_factor(strength)
     loss = 6 / (np.pi * kappa) * (1 - specularity) * integral
-    assert film_factor(kappa, strength, specularity) == pytest.approx(1 / (f - loss), rel=1e-9 + 3e-13 * f / (f - loss))
+    assert film_factor(kappa, strength, specularity) == pytest.approx(
+        1 / (f - loss), rel=1e-9 + 3e-13 * f / (f - loss)
+    )
 
 
 KAPPAS = 10.0 ** np.arange(-3, 5)
@@ -160,12 +169,17 @@ def test_film_factor_in_its_three_limits():
     kappa, strength = np.meshgrid(KAPPAS, STRENGTHS)
     assert film_factor(kappa, strength, 1.0) == pytest.approx(grain_factor(strength), rel=1e-10)
     for specularity in (0.0, 0.4, 0.99):
-        assert film_factor(KAPPAS, 0.0, specularity) == pytest.approx(surface_factor(KAPPAS, specularity), rel=1e-10)
+        assert film_factor(KAPPAS, 0.0, specularity) == pytest.approx(
+            surface_factor(KAPPAS, specularity), rel=1e-10
+        )
         assert film_factor(1e12, STRENGTHS, specularity) == pytest.approx(grain_factor(STRENGTHS), rel=1e-10)
 
 
 @given(
-    kappa=st.floats(1e-3, 1e3), strength=st.floats(0, 50), specularity=st.floats(0, 0.99), step=st.floats(1e-3, 0.01)
+    kappa=st.floats(1e-3, 1e3),
+    strength=st.floats(0, 50),
+    specularity=st.floats(0, 0.99),
+    step=st.floats(1e-3, 0.01),
 )
 def test_film_factor_moves_the_right_way(kappa, strength, specularity, step):
     here = film_factor(kappa, strength, specularity)
@@ -216,6 +230,8 @@ def test_none_explains_what_lies_outside():
 
 
 def test_missing_inputs_stay_missing():
-    values = film_factor(np.array([np.nan, 1.0, 1.0, 1.0]), np.array([0.1, np.nan, 0.1, 0.1]), np.array([0, 0, np.nan, 0]))
+    values = film_factor(
+        np.array([np.nan, 1.0, 1.0, 1.0]), np.array([0.1, np.nan, 0.1, 0.1]), np.array([0, 0, np.nan, 0])
+    )
     assert np.isnan(values).tolist() == [True, True, True, False]
     assert np.isnan(surface_factor(np.nan, 0.1)) and np.isnan(grain_factor(np.nan))

@@ -28,7 +28,9 @@ def integral(order, eta):
     total, falling = mpmath.mpf(1), mpmath.mpf(1)
     for k in range(1, 12):
         falling *= (j + 3 - 2 * k) * (j + 2 - 2 * k)
-        total += 2 * (1 - mpmath.mpf(2) ** (1 - 2 * k)) * mpmath.zeta(2 * k) * falling / mpmath.mpf(eta) ** (2 * k)
+        total += (
+            2 * (1 - mpmath.mpf(2) ** (1 - 2 * k)) * mpmath.zeta(2 * k) * falling / mpmath.mpf(eta) ** (2 * k)
+        )
     return mpmath.mpf(eta) ** (j + 1) / mpmath.gamma(j + 2) * total
 
 
@@ -38,7 +40,9 @@ def exact(t: float) -> tuple:
         t = mpmath.mpf(t)
         target = 4 / (3 * mpmath.sqrt(mpmath.pi)) * t ** mpmath.mpf("-1.5")
         start = mpmath.mpf(float(chemical_potential_ratio(float(t)) / float(t)))
-        eta = mpmath.findroot(lambda x: integral(0.5, x) / target - 1, (start, start * (1 + mpmath.mpf(10) ** -9)))
+        eta = mpmath.findroot(
+            lambda x: integral(0.5, x) / target - 1, (start, start * (1 + mpmath.mpf(10) ** -9))
+        )
         upper, middle, lower = (integral(order, eta) for order in (1.5, 0.5, -0.5))
         return t * eta, mpmath.mpf(15) / 4 * upper / middle - mpmath.mpf(9) / 4 * middle / lower
 
@@ -56,7 +60,10 @@ def test_the_textbook_form_cancels_where_ours_does_not():
     eta = inverse_fermi_integral(0.5, 4 / (3 * np.sqrt(np.pi)) * t**-1.5)
     upper, middle, lower = (fermi_integral(order, eta) for order in (1.5, 0.5, -0.5))
     textbook = 15 / 4 * upper / middle - 9 / 4 * middle / lower
-    errors = {"textbook": abs(float(textbook / heat - 1)), "ours": abs(float(heat_capacity_ratio(t) / heat - 1))}
+    errors = {
+        "textbook": abs(float(textbook / heat - 1)),
+        "ours": abs(float(heat_capacity_ratio(t) / heat - 1)),
+    }
     print("relative error of C_V at T/T_F = 1e-6:", errors)
     assert errors["textbook"] > 1e-6 and errors["ours"] < 1e-12
 
@@ -95,7 +102,9 @@ def test_three_dimensional_heat_is_the_slope_of_the_energy(t):
         return 1.5 * reduced * fermi_integral(1.5, eta) / fermi_integral(0.5, eta)
 
     step = 1e-3 * t
-    slope = (energy(t - 2 * step) - 8 * energy(t - step) + 8 * energy(t + step) - energy(t + 2 * step)) / (12 * step)
+    slope = (energy(t - 2 * step) - 8 * energy(t - step) + 8 * energy(t + step) - energy(t + 2 * step)) / (
+        12 * step
+    )
     assert heat_capacity_ratio(t) == pytest.approx(slope, rel=2e-8 + 1e-12 / t**2)
 
 
@@ -118,7 +127,9 @@ def test_the_series_is_the_exact_potential_to_its_order():
 @given(t=st.floats(1e-8, 1e5))
 def test_number_of_electrons_is_conserved(t):
     eta = chemical_potential_ratio(t) / t
-    assert fermi_integral(0.5, eta) * t**1.5 * 0.75 * np.sqrt(np.pi) == pytest.approx(1, rel=3e-14 * max(abs(eta), 10))
+    assert fermi_integral(0.5, eta) * t**1.5 * 0.75 * np.sqrt(np.pi) == pytest.approx(
+        1, rel=3e-14 * max(abs(eta), 10)
+    )
 
 
 @given(t=st.floats(1e-6, 1e4))
@@ -145,5 +156,10 @@ def test_smooth_enough_for_differences(function):
 
 def test_nan_in_gives_nan_out_and_shapes_are_kept():
     t = np.array([[0.01, np.nan], [1.0, 1e-5]])
-    for function in (chemical_potential_ratio, heat_capacity_ratio, chemical_potential_ratio_2d, heat_capacity_ratio_2d):
+    for function in (
+        chemical_potential_ratio,
+        heat_capacity_ratio,
+        chemical_potential_ratio_2d,
+        heat_capacity_ratio_2d,
+    ):
         assert np.array_equal(np.isnan(function(t)), np.isnan(t))
