@@ -6,12 +6,15 @@ colours, and text stays text. The frame does not know any material, so that one 
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass, replace
 from functools import lru_cache
 
 from sheetgen.figures import style
 from sheetgen.figures.markup import spans
 from sheetgen.figures.plot import Axis, Panel, Plot
+
+_CLASSES = re.compile(r'class="([^"]*)"')
 
 
 @dataclass(frozen=True)
@@ -35,12 +38,26 @@ def _seen(axis: Axis) -> Axis:
     return replace(axis, low=0.0, high=1.0, scale="linear", column="") if axis.bare else replace(axis, column="")
 
 
+@dataclass(frozen=True)
+class Frame:
+    """The SVG elements of a frame, and the classes that they have."""
+
+    elements: str
+    classes: frozenset[str]
+
+
 @lru_cache(maxsize=1024)
-def frame(spec: FrameSpec) -> str:
-    """The SVG elements of a frame; matplotlib is loaded when the first one is drawn."""
+def frame(spec: FrameSpec) -> Frame:
+    """A frame, drawn when it is first asked for: only then is matplotlib loaded."""
     from sheetgen.figures.canvas import draw
 
-    return draw(spec)
+    elements = draw(spec)
+    return Frame(elements, classes_of(elements) | {"gr"})
+
+
+def classes_of(elements: str) -> frozenset[str]:
+    """The classes of SVG elements."""
+    return frozenset(name for names in set(_CLASSES.findall(elements)) for name in names.split())
 
 
 def text_element(x: float, y: float, text: str, classes: str, angle: float = 0.0) -> str:

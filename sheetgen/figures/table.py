@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import dataclass
+from functools import lru_cache
 
 from sheetgen.figures.markup import plain
 from sheetgen.figures.plot import Panel
@@ -63,6 +64,7 @@ def _lines(one: Series, labels: list[str], columns: list[str]) -> list[str]:
     return [_quoted(name) + pattern % row for name, row in zip(one.names, rows, strict=True)]
 
 
+@lru_cache(maxsize=4096)
 def _quoted(text: str) -> str:
     text = plain(text)
     return '"' + text.replace('"', '""') + '"' if any(mark in text for mark in ',"\n') else text
