@@ -51,6 +51,7 @@ _GROUPS = (
     "_symmetry_Int_Tables_number",
 )
 _TEMPERATURES = ("_cell_measurement_temperature", "_diffrn_ambient_temperature")
+_POSITION = re.compile(r"\w+:(?P<line>\d+)(?::(?P<column>\d+)(?:\(\d+\))?:| in \w+:)?\s*(?P<what>.*)", re.DOTALL)
 # Degrees, and a share of the length: what rounding of a printed cell may do to a tie.
 _ANGLE_TOLERANCE = 0.01
 _LENGTH_TOLERANCE = 1e-4
@@ -97,10 +98,10 @@ def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
 
 
 def _syntax(message: str, path: Path) -> tuple[Place, str]:
-    """Where and what the library found wrong: its messages read `name:line:column(byte): what`."""
-    where = re.search(r":(\d+):(\d+)(?:\(\d+\))?:?\s*(.*)", message, re.DOTALL)
-    place = Place(str(path), int(where[1]), int(where[2])) if where else Place(str(path))
-    what = " ".join((where[3] if where else message).split())
+    """Where and what the library found wrong: its messages read `string:line:column: what`, columns from 0."""
+    where = _POSITION.match(message)
+    place = Place(str(path), int(where["line"]), int(where["column"] or -1) + 1) if where else Place(str(path))
+    what = " ".join((where["what"] if where else message).split())
     return place, f"not readable as CIF: {what}. Mend the file, or give lattice and atoms in the record."
 
 
@@ -214,6 +215,8 @@ def _atom(row: gemmi.cif.Table.Row) -> Site:
     element = _element(symbol)
     if element is None:
         raise UnreadableError(f"{where} names no element; expected a type symbol such as Ti")
+    if any(row.str(index) in "?." for index in (2, 3, 4)):
+        raise UnreadableError(f"{where} has no position; expected three fractions of the cell edges")
     try:
         position = tuple(snapped(bare_fraction(row.str(index))) for index in (2, 3, 4))
         occupancy = bare_fraction(row.str(5)) if row.has(5) and row.str(5) not in "?." else 1.0

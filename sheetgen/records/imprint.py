@@ -79,10 +79,8 @@ def _text(node: Node | None, key: str, reader: Reader) -> str:
     if node is None:
         return ""
     if not isinstance(node, Scalar) or not node.text.strip() or len(node.text) > _LONGEST_TEXT:
-        reader.fault(
-            node,
-            f"{written_key(key)}: expected a text of 1 to {_LONGEST_TEXT} characters; write one, or leave the key out.",
-        )
+        expected = f"expected a text of at most {_LONGEST_TEXT} characters"
+        reader.fault(node, f"{written_key(key)}: found {found(node)}; {expected}.")
         return ""
     return node.text.strip()
 
@@ -98,7 +96,7 @@ def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
     if node is None:
         return None
     if not isinstance(node, Scalar):
-        reader.fault(node, f"{name}: expected a temperature such as '293.15 K' or '20 °C'.")
+        reader.fault(node, f"{name}: found {found(node)}; expected a temperature such as '293.15 K' or '20 °C'.")
         return None
     if _BARE.fullmatch(node.text):
         node = Scalar(f"{node.text.strip()} K", node.plain, node.place)
@@ -113,10 +111,8 @@ def _temperatures(node: Node | None, reader: Reader) -> tuple[float, ...]:
     if node is None:
         return TEMPERATURES
     if not isinstance(node, Listing) or not 0 < len(node.items) <= MAXIMUM_TEMPERATURES:
-        reader.fault(
-            node,
-            f"temperatures: expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C].",
-        )
+        expected = f"expected a list of 1 to {MAXIMUM_TEMPERATURES}, such as [4.2 K, 77 K, 20 °C]"
+        reader.fault(node, f"temperatures: found {found(node)}; {expected}.")
         return TEMPERATURES
     kelvins = [_temperature(item, "temperatures", reader) for item in node.items]
     return tuple(value for value in kelvins if value is not None)
@@ -138,7 +134,7 @@ def _paper(node: Node | None, reader: Reader) -> str:
 
 def _table(node: Node | None, name: str, example: str, reader: Reader) -> Table:
     if node is not None and not isinstance(node, Table):
-        reader.fault(node, f"{name}: expected a mapping such as {example}.")
+        reader.fault(node, f"{name}: found {found(node)}; expected a mapping such as {example}.")
         node = None
     return node or Table({}, Place(""))
 

@@ -92,10 +92,21 @@ IDEAL_RATIO = (8 / 3) ** 0.5
 
 
 def lattice_name(system: str, centring: str) -> str:
-    """The contract's name for a Bravais lattice found by its space group."""
-    named = {("cubic", "P"): "sc", ("cubic", "I"): "bcc", ("cubic", "F"): "fcc", ("tetragonal", "I"): "bct"}
-    if name := named.get((system, centring)):
-        return name
-    if centring in "P" or system in ("rhombohedral", "hexagonal"):
-        return "rhombohedral" if centring == "R" else system
-    return {"I": "body-centred-", "F": "face-centred-"}.get(centring, "base-centred-") + system
+    """The name here of the Bravais lattice that a system (by its axes) and a centring make.
+
+    A centring that adds nothing new to a system, such as I of a triclinic cell, leaves the system's own name.
+    """
+    special = {
+        ("cubic", "P"): "sc",
+        ("cubic", "I"): "bcc",
+        ("cubic", "F"): "fcc",
+        ("tetragonal", "I"): "bct",
+        ("tetragonal", "F"): "bct",
+        ("hexagonal", "R"): "rhombohedral",
+        # Body and face centring of a monoclinic cell are base centring on other axes.
+        ("monoclinic", "I"): "base-centred-monoclinic",
+        ("monoclinic", "F"): "base-centred-monoclinic",
+    }
+    prefix = {"A": "base", "B": "base", "C": "base", "I": "body", "F": "face"}.get(centring, "")
+    name = special.get((system, centring)) or f"{prefix}-centred-{system}"
+    return name if name in LATTICES else system

@@ -99,11 +99,18 @@ def _appeared(fields: Mapping[str, str]) -> str:
     if fields.get("number"):
         volume += f"({fields['number']})"
     maker = fields.get("publisher") or fields.get("institution") or fields.get("school", "")
-    edition = f"{fields['edition']} edition" if fields.get("edition") else ""
+    edition = _edition(fields.get("edition", ""))
     place = ", ".join(part for part in (f"{host} {volume}".strip(), edition, maker, fields.get("address", "")) if part)
     pages = f", {fields['pages']}" if fields.get("pages") else ""
     year = f" ({fields['year']})" if fields.get("year") else ""
     return f"{place}{pages}{year}".strip(" ,")
+
+
+def _edition(written: str) -> str:
+    """`3` as "edition 3", `Third` as "Third edition"."""
+    if not written:
+        return ""
+    return f"{written} edition" if any(character.isalpha() for character in written) else f"edition {written}"
 
 
 def link_of(fields: Mapping[str, str]) -> str | None:

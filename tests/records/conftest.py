@@ -24,7 +24,14 @@ measured:
     - {value: 0.2 µΩ cm, at: 77 K}
 """
 IMPRINT = "title: A handbook\n"
-SOURCES = "@article{good2000,\n  author = {Good, Ann},\n  title = {Fine numbers},\n  journal = {J. Num.},\n  year = {2000}\n}\n"
+SOURCES = """\
+@article{good2000,
+  author = {Good, Ann},
+  title = {Fine numbers},
+  journal = {J. Num.},
+  year = {2000}
+}
+"""
 
 
 @pytest.fixture
