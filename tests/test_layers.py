@@ -18,7 +18,7 @@ LAYERS = [
     {"physics"},
     {"records"},
     {"quantities"},
-    {"uncertainty"},
+    {"uncertainty", "draws"},
     {"standing"},
     {"sheet"},
     {"handbook"},

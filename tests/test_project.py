@@ -77,7 +77,7 @@ def test_documents_name_files_that_exist(root):
     for document in ("README.md", "DEVELOPERS.md"):
         text = (root / document).read_text(encoding="utf-8")
         for name in re.findall(r"`((?:[\w.-]+/)+[\w.-]*|[A-Z]+\.md|Makefile|constraints\.txt)`", text):
-            assert name.startswith(("site/", ".venv/")) or (root / name).exists(), f"{document}: {name}"
+            assert name.startswith(("site/", ".venv/", ".site.")) or (root / name).exists(), f"{document}: {name}"
         for target in re.findall(r"\]\(([^)#:]+)\)", text):
             assert (root / target).exists(), f"{document}: {target}"
 
