@@ -27,7 +27,7 @@ def conductivity(frequency):
 
 
 def test_speed_of_light_is_that_of_the_si():
-    assert SPEED_OF_LIGHT == c
+    assert c == SPEED_OF_LIGHT
 
 
 def test_f_sum_rule():

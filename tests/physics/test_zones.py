@@ -110,7 +110,7 @@ def test_bands_at_the_centre_of_a_simple_cube():
     unit = hbar**2 * (2 * np.pi / a) ** 2 / (2 * electron_mass)
     energies = empty_lattice_bands(np.zeros((1, 3)), np.eye(3) * 2 * np.pi / a, electron_mass, 33) / unit
     assert energies[0] == pytest.approx([0] + [1] * 6 + [2] * 12 + [3] * 8 + [4] * 6, abs=1e-9)
-    assert HBAR == pytest.approx(hbar, rel=1e-15)
+    assert pytest.approx(hbar, rel=1e-15) == HBAR
 
 
 def test_bands_are_complete_and_periodic():
