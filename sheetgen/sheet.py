@@ -9,6 +9,7 @@ from functools import cached_property
 import numpy as np
 from scipy import constants as c
 
+from sheetgen.draws import Interval, draw_intervals
 from sheetgen.quantities import Definition, Registry
 from sheetgen.quantities.batch import input_titles
 from sheetgen.records import Imprint, Record, Specimen, Value
@@ -16,6 +17,7 @@ from sheetgen.records.units import si_factor
 from sheetgen.standing import AssumptionCheck, Confrontation, Limits, PlainAnswer, plain_answer, thresholds
 from sheetgen.standing.answer import Judged
 from sheetgen.standing.confrontation import confront, confront_specimen
+from sheetgen.standing.crosschecks import Subject, crosschecks
 from sheetgen.standing.entries import axis_of, deciding, entry_standing
 from sheetgen.standing.grading import ADJUST
 from sheetgen.standing.limits import Indicators
@@ -29,12 +31,14 @@ AXIS_UNITS = {"temperature": ("temperature", 1.0), "resistivity": ("temperature"
 
 @dataclass(frozen=True)
 class Derivation:
-    """A batch that has been evaluated, with the indicators of its assumptions."""
+    """A batch that has been evaluated, with the indicators of its assumptions; `draws` is how many to check it by."""
 
     derived: Derived
     indicators: Indicators
     registry: Registry
     imprint: Imprint
+    draws: int = 0
+    seed: int = 0
 
     def limits(self, row: int) -> Limits:
         """The assumptions of one row."""
@@ -65,6 +69,13 @@ class Row:
         found = judge(self.derived, self.row, self.limits, self.imprint, thresholds(self.imprint))
         order = {id: position for position, id in enumerate(self.definitions)}
         return tuple(sorted(found, key=lambda confrontation: order[confrontation.quantity]))
+
+    @cached_property
+    def intervals(self) -> dict[str, list[Interval | None]]:
+        """Quantity → coverage interval of each entry; empty where no draws were asked for."""
+        if not self.derivation.draws:
+            return {}
+        return draw_intervals(self.derived, self.row, self.derivation.draws, self.derivation.seed)
 
     def published_entries(self, definition: Definition) -> list[int]:
         """The entries of a quantity that are stated: present, and not only there for a measurement."""
@@ -146,6 +157,9 @@ class Row:
         stated["depends_on"] = self._depends_on(definition, entry)
         if number is not None and number.budget:
             stated["budget"] = number.budget
+        if definition.id in self.intervals and (interval := self.intervals[definition.id][entry]) is not None:
+            stated["coverage_interval"] = [interval.low / factor, interval.high / factor]
+            stated["first_order"] = interval.first_order
         return {**stated, "standing": standing}
 
     def _number(self, definition: Definition, entry: int) -> Number | None:
@@ -186,6 +200,18 @@ class Row:
             here = here[position : position + 1]
         return [id for id in here if id is not None]
 
+    def recalled(self) -> dict[str, tuple[str, ...]]:
+        """Quantity → the inputs quoted from memory that it rests on, near or far."""
+        recalled = {id for id, value in self.record.inputs.items() if value.recalled}
+        found = {}
+        for id, definition in self.definitions.items():
+            entries = self.published_entries(definition)
+            names = self.derived.plan.inputs_of(id)
+            ids = [i for name in names for entry in entries for i in self._input_ids(name, definition, entry)]
+            if on := tuple(dict.fromkeys(i for i in ids if i in recalled)):
+                found[id] = on
+        return found
+
     def _why(self, definition: Definition) -> str:
         lacking = list(dict.fromkeys(self._lacking(definition)))
         if lacking:
@@ -208,19 +234,24 @@ class Row:
 class Sheet:
     """What one sheet states.
 
-    `data` is the content of its data file; the other attributes hold what only the page shows.
+    `data` is the content of its data file; the other attributes hold what only the page shows: `recalled` maps a
+    quantity to the inputs quoted from memory that it rests on, `missing` one to why it is absent.
     """
 
     def __init__(self, material: Row, specimens: Sequence[Row], edition: str):
         self.record = material.record
         self._derived, self._row = material.derived, material.row
         self.missing = material.missing()
+        self.recalled = material.recalled()
         rows = [material, *specimens]
         self.confrontations = tuple(one for row in rows for one in row.confrontations)
         self.checks: tuple[AssumptionCheck, ...] = tuple(check for row in rows for check in row.limits.checks)
         self.answer: PlainAnswer = plain_answer(list(material.judged()))
         self.specimen_missing = {row.specimen.name: row.missing() for row in specimens}
         self.data = self._data(material, specimens, edition)
+        self.crosschecks = crosschecks(
+            Subject(self.record, material.imprint, self.confrontations, self.si("nearest_neighbour_distance"))
+        )
 
     def si(self, id: str, index: int = 0) -> float:
         """One published entry in SI, NaN where it is absent."""

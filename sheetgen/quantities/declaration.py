@@ -49,7 +49,7 @@ class Definition:
 
     `listed_by` names the axis of its list, `needs` the inputs that must be there although the formula does not
     use them, `absent` says when the formula gives nothing, `stated_at` is the photon energy (eV) of an optical
-    line that is not listed by it.
+    line that is not listed by it; `drawn` is false where a value takes too long to find for thousands of draws.
     """
 
     id: str
@@ -74,6 +74,7 @@ class Definition:
     comparison: Comparison | None = None
     stated_at: float | None = None
     carries_uncertainty: bool = True
+    drawn: bool = True
     in_specimens: bool = False
 
     @property

@@ -331,6 +331,7 @@ def film_resistivity(reference_resistivity, bulk_path, specimen_thickness, speci
     formula=r"p: \quad \rho_\mathrm{film}(p, R) = \rho_\mathrm{measured}",
     source="mayadas1970",
     absent="no specularity between 0 and 1 gives the measured resistivity with the stated grain reflection",
+    drawn=False,
     **FILM_PATH,
 )
 def explaining_specularity(measured_film_ratio, bulk_path, specimen_thickness, grain_strength):
@@ -348,6 +349,7 @@ def explaining_specularity(measured_film_ratio, bulk_path, specimen_thickness, g
     formula=r"R: \quad \rho_\mathrm{film}(p, R) = \rho_\mathrm{measured}",
     source="mayadas1970",
     absent="no grain reflection from 0 to below 1 gives the measured resistivity with the stated specularity",
+    drawn=False,
     **FILM_PATH,
 )
 def explaining_grain_reflection(

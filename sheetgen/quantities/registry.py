@@ -39,6 +39,18 @@ class Plan:
                 reach.setdefault(name, set()).update(downstream)
         return {name: frozenset(ids) for name, ids in reach.items()}
 
+    def inputs_of(self, id: str) -> tuple[str, ...]:
+        """Names of all inputs that a definition rests on, near or far, in the order they are met."""
+        return self._inputs[id]
+
+    @cached_property
+    def _inputs(self) -> dict[str, tuple[str, ...]]:
+        found: dict[str, tuple[str, ...]] = {}
+        for id, definition in self.definitions.items():
+            parts = (found.get(name, (name,)) for name in definition.reads)
+            found[id] = tuple(dict.fromkeys(name for part in parts for name in part))
+        return found
+
     def needed_for(self, ids: Iterable[str]) -> frozenset[str]:
         """The ids themselves and every definition that they rest on."""
         needed, waiting = set(), [name for name in ids if name in self.definitions]
