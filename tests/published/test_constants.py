@@ -50,7 +50,7 @@ def test_sheets_name_the_set():
 
 
 def test_light_is_as_fast_in_the_physics():
-    assert drude.SPEED_OF_LIGHT == c.c
+    assert c.c == drude.SPEED_OF_LIGHT
 
 
 def test_coulomb_energy_of_two_electrons():

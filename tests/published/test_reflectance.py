@@ -23,7 +23,7 @@ from scipy import constants as c
 
 # Metal: (n at room temperature (1e28/m³), resistivity near 295 K (µΩ cm), threshold (eV), two independent sets).
 # Densities of electrons from the mass density of the metal (CRC Handbook), resistivities from the CRC Handbook and
-# Kittel, ch. 6, table 3. Thresholds: Na, K: Smith (1969); Al: the weaker of its two edges, Ehrenreich, Philipp & Segall,
+# Kittel, ch. 6, table 3. Thresholds: Na, K: Smith (1969); Al: the weaker of two edges, Ehrenreich, Philipp & Segall,
 # Phys. Rev. 132, 1918 (1963); Ag, Au, Cu: Johnson & Christy, Phys. Rev. B 6, 4370 (1972). All from memory.
 METALS = {
     "Na": (2.54, 4.77, 2.1, ("Smith", "Inagaki")),
