@@ -10,8 +10,10 @@ from sheetgen.figures.style import MARKERS, RADIUS, UNITS_PER_POINT
 @lru_cache(maxsize=64)
 def _shape(look: str) -> tuple[float, float, str]:
     """Offset to the first point, and the rest relative to it, in user units."""
-    shape = MARKERS[look][0]
+    shape, _, filled = MARKERS[look]
     r = RADIUS * UNITS_PER_POINT
+    if shape == "circle" and filled:
+        return 0, 0, "h0"  # a line without length under a round cap is a disc
     if shape == "circle":
         d = round(r)
         return -d, 0, f"a{d} {d} 0 1 0 {2 * d} 0a{d} {d} 0 1 0 {-2 * d} 0z"

@@ -10,7 +10,7 @@ import numpy as np
 from sheetgen.figures.layout import BOTTOM, LEGEND_ROW, RIGHT, TOP
 from sheetgen.figures.markup import from_latex
 from sheetgen.figures.plot import Axis, Figure, Key, Layer, Note, Panel, Plot, Points
-from sheetgen.figures.scales import FINE_STEPS, decades, snap_up
+from sheetgen.figures.scales import FINE_STEPS, snap_up, spread
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.style import WIDTH
 from sheetgen.figures.words import number, unit_label
@@ -67,10 +67,11 @@ def rows(
     keys: tuple[Key, ...] = (),
     behind: tuple[Layer, ...] = (),
     root: str = "../../",
+    signed: bool = False,
 ) -> Plot:
     """A row a material, in the order in which the materials first appear among the entries.
 
-    What is negative stands at its size; its name in the CSV says so.
+    What is negative stands at its size; its name in the CSV says so, and with `signed` a note in its row.
     """
     materials = list(dict.fromkeys(entry.slug for entry in entries))
     names = {entry.slug: entry.name for entry in entries}
@@ -81,6 +82,10 @@ def rows(
     layers += [
         Note(_short(names[slug]), axis.low, level, "end", dx=-4, dy=-2.3, link=f"{root}materials/{slug}.html")
         for slug, level in levels.items()
+    ]
+    layers += [
+        Note("opposite sign", axis.high, levels[slug], "end", dx=-3, dy=-2.3, ink="two")
+        for slug in dict.fromkeys(entry.slug for entry in entries if signed and entry.value < 0)
     ]
     tall = ROW * len(materials) + 4
     panel = Panel(
@@ -116,7 +121,7 @@ def _axis(definition, entries: Sequence[Entry]) -> Axis:
     label = sign + (symbol if definition.unit == "1" else f"{symbol} / {unit_label(definition.unit)}")
     positive = sizes[sizes > 0]
     if len(positive) and positive.max() > 5 * positive.min():
-        return Axis(label, *decades([0.9 * positive.min(), 1.1 * positive.max()]), "log", aside=True)
+        return Axis(label, *spread(positive), "log", aside=True)
     return Axis(label, 0.0, snap_up(1.08 * sizes.max(), FINE_STEPS) if len(positive) else 1.0, aside=True)
 
 

@@ -36,7 +36,8 @@ def snap_up(largest: float, steps: tuple[float, ...] = STEPS) -> float:
     if not (largest > 0 and math.isfinite(largest)):
         raise ValueError(f"an axis cannot end at {largest}; expected a positive finite number")
     power = 10.0 ** math.floor(math.log10(largest))
-    return next(round(step * power, 12) for step in (*steps, 10 * steps[0]) if step * power >= largest * (1 - 1e-9))
+    ends = (step * power for step in (*steps, 10 * steps[0]) if step * power >= largest * (1 - 1e-9))
+    return float(f"{next(ends):.12g}")
 
 
 FINE_STEPS = (1.0, 1.5, 2.0, 3.0, 4.0, 5.0, 6.0, 8.0, 10.0)
@@ -54,6 +55,13 @@ def decades(values, least: int = 1, every: int = 1) -> tuple[float, float]:
             high + every * (high - exponents.max() <= exponents.min() - low),
         )
     return 10.0**low, 10.0**high
+
+
+def spread(values) -> tuple[float, float]:
+    """Round ends of a logarithmic axis with some room around all values."""
+    values = np.asarray(values, dtype=float)
+    # 1/x turns "round up" into "round down" on the same steps.
+    return 1 / snap_up(1.25 / values.min(), FINE_STEPS), snap_up(1.25 * values.max(), FINE_STEPS)
 
 
 _SUPERSCRIPTS = str.maketrans("-0123456789", "⁻⁰¹²³⁴⁵⁶⁷⁸⁹")

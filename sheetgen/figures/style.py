@@ -67,6 +67,7 @@ STROKES = {
     "rule": Stroke("faint", 0.7, (2, 2)),
     "hidden": Stroke("faint", 0.5, (1.5, 1.5)),
     "edge": Stroke("ink", 0.8),
+    "leader": Stroke("faint", 0.4),
 }
 AREAS = {"ground": 1.0, "one": 0.17, "two": 0.3, "three": 0.2, "four": 0.2, "faint": 0.13}
 
@@ -107,12 +108,17 @@ def _rules() -> list[str]:
         rules.append(f".l-{name}{{stroke:var(--{stroke.ink});stroke-width:{round(stroke.width * unit)}{dash}}}")
     for ink, opacity in AREAS.items():
         rules.append(f".a-{ink}{{fill:var(--{ink});fill-opacity:{opacity:g}}}")
-    for name, (_, ink, filled) in MARKERS.items():
+    for name, (shape, ink, filled) in MARKERS.items():
+        if filled and shape == "circle":
+            rules.append(
+                f".m-{name}{{stroke:var(--{ink});stroke-width:{2 * RADIUS * unit + 50:g};stroke-linecap:round}}"
+            )
+            continue
         fill = f"var(--{ink})" if filled else "var(--ground)"
         rules.append(f".m-{name}{{fill:{fill};stroke:var(--{ink});stroke-width:{70 if filled else 100}}}")
     for ink in ("one", "two", "three", "four", "ink", "faint"):
         rules.append(f".e-{ink}{{stroke:var(--{ink});stroke-width:70}}")
-    rules.append("a:hover path,a:focus path{stroke:var(--ink);stroke-width:160}")
+    rules.append("a:hover path,a:focus path{stroke:var(--ink)}")
     rules.append("a:hover text,a:focus text{text-decoration:underline}")
     return rules
 
