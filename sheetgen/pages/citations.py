@@ -99,26 +99,30 @@ def safe_link(link: str | None) -> str | None:
 
 @dataclass(frozen=True)
 class Supplied:
-    """One value that a source supplies: of which material, which input, how much."""
+    """What a source supplies to one material: each input with its value, and whether it is recalled."""
 
     slug: str
     material: str
-    input: str
-    value: Markup
-    recalled: bool
+    values: list[tuple[str, str, bool]]
 
 
 def supplied_by(sheets: Iterable[Any]) -> dict[str, list[Supplied]]:
-    """Source key → the values that it supplies, in the order of the sheets."""
+    """Source key → the values that it supplies, by material in the order of the sheets."""
     found: dict[str, list[Supplied]] = {}
     for sheet in sheets:
+        here: dict[str, Supplied] = {}
         names = tuple(specimen.name for specimen in sheet.record.specimens)
         for identifier, given in sheet.data["inputs"].items():
-            number = numbers.stated(given["value"], given.get("standard_uncertainty"))
-            value = numbers.with_unit(number, given["unit"])
             for key in given.get("sources", ()):
+                material = here.setdefault(key, Supplied(sheet.record.slug, sheet.record.name, []))
                 label = words.input_words(identifier, names)
-                found.setdefault(key, []).append(
-                    Supplied(sheet.record.slug, sheet.record.name, label, value, bool(given.get("recalled")))
-                )
+                material.values.append((label, _as_text(given), bool(given.get("recalled"))))
+        for key, material in here.items():
+            found.setdefault(key, []).append(material)
     return found
+
+
+def _as_text(given: dict[str, Any]) -> str:
+    number = numbers.stated(given["value"], given.get("standard_uncertainty")).text
+    unit = numbers.unit_text(given["unit"])
+    return f"{number}{numbers.NARROW}{unit}" if unit else number

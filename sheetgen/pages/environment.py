@@ -69,11 +69,13 @@ class Press:
         """Where in a template the error arose; None where it arose in none."""
         if isinstance(error, jinja2.TemplateSyntaxError):
             return Place(error.filename or error.name or "a template", error.lineno)
-        if isinstance(error, jinja2.TemplateNotFound):
-            return Place(str(Path(self.folders[0]) / str(error.name)))
         frames = traceback.extract_tb(error.__traceback__)
         own = [frame for frame in frames if frame.filename.startswith(self.folders)]
-        return Place(own[-1].filename, own[-1].lineno or 0) if own else None
+        if own:
+            return Place(own[-1].filename, own[-1].lineno or 0)
+        if isinstance(error, jinja2.TemplateNotFound):
+            return Place(str(Path(self.folders[0]) / str(error.name)))
+        return None
 
 
 def _explained(error: BaseException) -> str:

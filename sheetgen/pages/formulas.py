@@ -31,12 +31,15 @@ class FormulaError(ValueError):
 
 @cache
 def formula(latex: str, display: bool = False) -> Markup:
-    """MathML for a LaTeX formula, with its reading in words as the alternative text.
+    """MathML for a LaTeX formula, with its reading in words as the alternative text; nothing for no formula.
 
     Only MathML's own elements and attributes pass, and no styling (the pages allow no inline style). Raises
     FormulaError where the LaTeX is not understood.
     """
+    if not latex:
+        return Markup("")
     root = _converted(latex)
+    _unwrap(root)
     for element in root.iter():
         _tidy(element, latex)
     root.attrib.clear()
@@ -53,6 +56,16 @@ def _converted(latex: str) -> ElementTree.Element:
         return ElementTree.fromstring(convert(_UPRIGHT.sub(r"\\text{\1}", latex)))
     except Exception as error:  # the converter's own errors have no common class below Exception
         raise FormulaError(f"the formula {latex!r} cannot be set ({type(error).__name__})") from error
+
+
+def _unwrap(element: ElementTree.Element) -> None:
+    """Take out rows that hold one thing only, which change nothing but the size of the page."""
+    for position, child in enumerate(list(element)):
+        _unwrap(child)
+        if child.tag.endswith("}mrow") and len(child) == 1:
+            element[position] = child[0]
+    if element.tag.endswith("}math") and len(element) == 1 and element[0].tag.endswith("}mrow"):
+        element[:] = list(element[0])
 
 
 def _tidy(element: ElementTree.Element, latex: str) -> None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import datetime
 import re
+from functools import cache
 
 from markupsafe import Markup
 
@@ -50,6 +51,39 @@ _INPUT_WORDS = {
 }
 _OPTICAL = re.compile(r"measured\.refractive_index\.(\d+)\.(\w+)")
 _SPECIMEN = re.compile(r"specimens\.(\d+)\.(\w+)")
+
+
+@cache
+def standing(word: str) -> Markup:
+    """The mark of a standing: its shape is drawn by the style sheet."""
+    return Markup('<span class="standing {0}">{0}</span>').format(word)
+
+
+@cache
+def mark(word: str) -> Markup:
+    """A standing in a crowded table: its shape alone, the word for those who do not see it; nothing if unchecked."""
+    if word == "unchecked":
+        return Markup("")
+    return Markup('<span class="standing only-mark {0}" role="img" aria-label="{0}"></span>').format(word)
+
+
+@cache
+def condition(word: str) -> Markup:
+    """How well an assumption is met."""
+    return Markup('<span class="condition {0}">{0}</span>').format(word)
+
+
+def draft(is_draft: bool) -> Markup:
+    """The stamp of a record that nobody has reviewed."""
+    return Markup('<span class="draft">draft</span>' if is_draft else "")
+
+
+def over(power: int, unit: Markup) -> Markup:
+    """What a column is counted in: a power of ten and a unit."""
+    if not power and not unit:
+        return Markup("")
+    ten = Markup(f"10<sup>{numbers.signed(power)}</sup>{numbers.NARROW if unit else ''}") if power else ""
+    return Markup('<span class="over">{}{}</span>').format(ten, unit)
 
 
 def input_words(identifier: str, specimens: tuple[str, ...] = ()) -> str:
