@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 import numpy as np
 from scipy import constants as c
 
@@ -12,9 +14,16 @@ from sheetgen.figures.scales import FINE_STEPS, snap_up
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.subject import Subject
 from sheetgen.figures.words import enumeration, kelvin, number
+from sheetgen.physics.occupation import (
+    chemical_potential_ratio,
+    chemical_potential_ratio_2d,
+    chemical_potential_series,
+)
 
 MILLIELECTRONVOLT = c.e * 1e-3
 SERIES_HOLDS_TO = 0.3
+# End of the axis of T/T_F → range of µ/E_F that shows what happens up to there.
+LEVELS = {1.2: (-0.5, 1.1), 3.0: (-5.0, 1.5)}
 
 
 def draw(subject: Subject) -> Figure | None:
@@ -25,7 +34,8 @@ def draw(subject: Subject) -> Figure | None:
 def plot(subject: Subject) -> Plot:
     """Occupation over energies from the Fermi level; µ/E_F over T/T_F, the same curve for every gas."""
     reach = snap_up(7.5 * c.k * max(subject.temperatures) / MILLIELECTRONVOLT, FINE_STEPS)
-    edges, potential = _occupations(subject, reach), _potential(subject)
+    end = 1.2 if max(subject.temperatures) <= 1.2 * subject.si("fermi_temperature") else 3.0
+    edges, potential = _occupations(subject, reach), _potential(subject, end)
     height, upper, lower = stacked(70, 86, (rows_for(edges, 4), 2))
     panels = (
         Panel(
@@ -38,8 +48,8 @@ def plot(subject: Subject) -> Plot:
         ),
         Panel(
             lower,
-            Axis("*T*/*T*_{F}", 0, 1.2),
-            Axis("*µ*/*E*_{F}", -0.5, 1.1),
+            Axis("*T*/*T*_{F}", 0, end),
+            Axis("*µ*/*E*_{F}", *LEVELS[end]),
             potential,
             keys_of(potential),
             2,
@@ -67,27 +77,30 @@ def _occupations(subject: Subject, reach: float) -> tuple:
     return tuple(layers)
 
 
-def _potential(subject: Subject) -> tuple:
+@lru_cache(maxsize=4)
+def universal_potential(dimension: int, end: float) -> tuple:
+    """µ/E_F over T/T_F, which every gas of one number of dimensions shares, and the series where there is one."""
+    share = np.linspace(0.0, end, 301)[1:]
+    if dimension == 2:
+        return (Curve("exact", share, chemical_potential_ratio_2d(share)),)
+    low = np.linspace(0.0, SERIES_HOLDS_TO, 40)
+    return (
+        Area("series holds", low[[0, -1]], np.full(2, -9.0), np.full(2, 9.0), "faint", unlisted=True),
+        Curve("exact", share, chemical_potential_ratio(share)),
+        Curve("Sommerfeld series", low, chemical_potential_series(low), "two"),
+    )
+
+
+def _potential(subject: Subject, end: float) -> tuple:
     level, scale = subject.si("fermi_energy"), subject.si("fermi_temperature")
-    share = np.linspace(0.004, 1.2, 300)
-    exact = subject.curve("chemical_potential", temperature=share * scale) / level
-    layers: list = []
-    if subject.dimension == 3:
-        low = np.linspace(0.0, SERIES_HOLDS_TO, 40)
-        series = subject.curve("chemical_potential_series", temperature=low * scale) / level
-        band = np.array([0.0, SERIES_HOLDS_TO])
-        layers.append(Area("series holds", band, np.full(2, -9.0), np.full(2, 9.0), "faint", unlisted=True))
-        layers += [Curve("exact", share, exact), Curve("Sommerfeld series", low, series, "two")]
-    else:
-        layers.append(Curve("exact", share, exact))
     temperatures = np.array(subject.temperatures)
     stated = np.array([subject.si("chemical_potential", index) for index in range(len(temperatures))])
-    layers += [
+    return (
+        *universal_potential(subject.dimension, end),
         Rule("", y=0.0, look="axis"),
         Points("tabulated", temperatures / scale, stated / level, "open"),
-        Note(f"*T*_{{F}} = {number(scale)} K", 1.2, 1.1, "end", dx=-4, dy=-10),
-    ]
-    return tuple(layers)
+        Note(f"*T*_{{F}} = {number(scale)} K", end, LEVELS[end][1], "end", dx=-4, dy=-10),
+    )
 
 
 def _words(subject: Subject) -> str:
