@@ -84,15 +84,12 @@ def overlapping(crystal: Crystal) -> tuple[Site, Site] | None:
     positions = np.array([site.position for site in crystal.sites])
     occupancies = np.array([site.occupancy for site in crystal.sites])
     tensor = np.array(metric(crystal))
-    for index, site in enumerate(crystal.sites[:-1]):
-        difference = positions[index + 1 :] - positions[index]
-        difference -= np.round(difference)
-        squares = np.einsum("ni,ij,nj->n", difference, tensor, difference)
-        full = occupancies[index + 1 :] + site.occupancy > 1.001
-        clashes = np.flatnonzero((squares < OVERLAP_DISTANCE**2) & full)
-        if clashes.size:
-            return site, crystal.sites[index + 1 + int(clashes[0])]
-    return None
+    difference = positions[:, None] - positions
+    difference -= np.round(difference)
+    near = np.sum(difference @ tensor * difference, axis=-1) < OVERLAP_DISTANCE**2
+    full = occupancies[:, None] + occupancies > 1.001
+    clashes = np.argwhere(np.triu(near & full, k=1))
+    return tuple(crystal.sites[index] for index in clashes[0]) if clashes.size else None
 
 
 def nearest_neighbour_distance(crystal: Crystal) -> float:
@@ -106,7 +103,7 @@ def nearest_neighbour_distance(crystal: Crystal) -> float:
     for position in positions:
         difference = positions - position
         difference = (difference - np.round(difference))[:, None, :] + images
-        squares = np.einsum("nmi,ij,nmj->nm", difference, tensor, difference)
+        squares = np.sum(difference @ tensor * difference, axis=-1)
         apart = squares[squares > OVERLAP_DISTANCE**2]
         shortest = min(shortest, apart.min(initial=np.inf))
     return math.sqrt(shortest)

@@ -78,6 +78,7 @@ MEASURED = {
     "interband_threshold": Measure("an energy", "J", "2.1 eV", 1e-23, 2e-17),
     "melting_point": Measure("a temperature", "K", "1357.77 K", 0.1, 1e4),
     "critical_temperature": Measure("a temperature", "K", "1.18 K", 1e-6, 1e3),
+    "magnetic_ordering_temperature": Measure("a temperature", "K", "1043 K", 1e-6, 1e4),
 }
 OPTICAL = {
     "photon_energy": Measure("an energy", "J", "1.5 eV", 1e-25, 2e-14),

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 
 from sheetgen.faults import FaultLog, Place, did_you_mean
 from sheetgen.records.nodes import Listing, Node, Scalar, Table, found, plain_data
+from sheetgen.records.quickly import fits
 from sheetgen.records.schema import canonical_schema, validator
 from sheetgen.records.spelling import written_key
 from sheetgen.records.structure import canonical_lattice
@@ -26,6 +27,8 @@ def has_record_shape(root: Table, log: FaultLog) -> bool:
     structure = data.get("structure")
     if isinstance(structure, dict) and isinstance(structure.get("lattice"), str):
         structure["lattice"] = canonical_lattice(structure["lattice"])
+    if fits(data, canonical_schema()):
+        return True
     errors = islice(validator().iter_errors(data), MAXIMUM_FAULTS)
     faults = dict.fromkeys(fault for error in errors for fault in _faults(error, root))
     for place, message in faults:

@@ -15,7 +15,7 @@ SIZES = ("thickness", "diameter", "edge")
 
 def read_specimens(listing: Listing, crystal: Crystal | None, reader: Reader) -> tuple[Specimen, ...]:
     """The specimens in the order of the record; none is thinner than an atom."""
-    smallest = nearest_neighbour_distance(crystal) if crystal else 0.0
+    smallest = nearest_neighbour_distance(crystal) if crystal and listing.items else 0.0
     specimens = tuple(_specimen(table, smallest, reader) for table in listing.items)
     _check_names(listing, reader)
     return specimens

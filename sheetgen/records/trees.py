@@ -41,7 +41,7 @@ def read_tree(text: str, file: str, log: FaultLog, example: str = "name: Copper"
         return None
     builder = _Builder(file, log, example)
     try:
-        root = builder.document(iter(yaml.parse(text, Loader=_LOADER)))
+        root = builder.document(iter(_LOADER(text).get_event, None))
     except yaml.MarkedYAMLError as error:
         builder.fault(_syntax_mark(error), _syntax_message(error))
     except yaml.YAMLError as error:
@@ -85,7 +85,9 @@ class _Builder:
 
     def node(self, event: yaml.Event, events: Iterator[yaml.Event], depth: int) -> Node:
         place = self.place(event.start_mark)
-        self._check_bounds(place, depth)
+        self.nodes += 1
+        if self.nodes > MAXIMUM_NODES or depth > MAXIMUM_DEPTH:
+            self._give_up(place, depth)
         if isinstance(event, yaml.AliasEvent):
             self.fault(place, f"the alias {shown('*' + event.anchor)} is not read; write the value out here.")
             return Scalar("", True, place)
@@ -110,14 +112,11 @@ class _Builder:
             )
         return Scalar(event.value, plain, place)
 
-    def _check_bounds(self, place: Place, depth: int) -> None:
-        self.nodes += 1
-        if self.nodes > MAXIMUM_NODES:
-            self.fault(place, f"more than {MAXIMUM_NODES} keys and values; a record needs fewer. Split the file.")
-            raise _GivenUpError
-        if depth > MAXIMUM_DEPTH:
-            self.fault(place, f"nested deeper than {MAXIMUM_DEPTH} levels; a record needs fewer.")
-            raise _GivenUpError
+    def _give_up(self, place: Place, depth: int) -> None:
+        deep = f"nested deeper than {MAXIMUM_DEPTH} levels; a record needs fewer."
+        large = f"more than {MAXIMUM_NODES} keys and values; a record needs fewer. Split the file."
+        self.fault(place, deep if depth > MAXIMUM_DEPTH else large)
+        raise _GivenUpError
 
     def _listing(self, place: Place, events: Iterator[yaml.Event], depth: int) -> Listing:
         items = []

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 
 from sheetgen.faults import FaultLog, Place, did_you_mean
 from sheetgen.records.measures import ANGLE, TEMPERATURE, Measure
@@ -63,16 +63,13 @@ class Reader:
 
     def origin(self, table: Table, inherited: Origin) -> Origin:
         """What a mapping says about where its values come from, over what it inherits."""
-        origin = inherited
-        if (at := table.node("at")) is not None:
-            origin = replace(origin, temperature=self.temperature(at, "at"))
-        if (sources := table.node("from")) is not None:
-            origin = replace(origin, sources=self.source_keys(sources))
-        if (recalled := table.node("recalled")) is not None:
-            origin = replace(origin, recalled=truth(recalled))
-        if (note := table.node("note")) is not None:
-            origin = replace(origin, note=note.text.strip())
-        return origin
+        at, cited, recalled = table.node("at"), table.node("from"), table.node("recalled")
+        return Origin(
+            inherited.temperature if at is None else self.temperature(at, "at"),
+            inherited.sources if cited is None else self.source_keys(cited),
+            inherited.recalled if recalled is None else truth(recalled),
+            text_of(table.node("note")) or inherited.note,
+        )
 
     def temperature(self, node: Scalar, name: str) -> float | None:
         """A temperature in K, or None with a fault logged."""

@@ -12,8 +12,10 @@ from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 
 from sheetgen.faults import FaultsError
-from sheetgen.records import Folder, Value, read_folder
-from sheetgen.records.spelling import written_key
+from sheetgen.records import Folder, Value, read_folder, record_schema
+from sheetgen.records.quickly import fits
+from sheetgen.records.schema import canonical_schema, validator
+from sheetgen.records.spelling import canonical_key
 
 ROOT = Path(__file__).parents[2]
 SEEDS = [
@@ -33,8 +35,9 @@ FOLDER_SETTINGS = settings(
 # Words and marks that mean something to one of the parsers.
 SPARKS = st.sampled_from([
     "No", "on", "1:30", "0123", "1e-8", "1e999", "-", "(", ")", "[", "]", "{", "}", ":", ": ", ",", "#", "&a", "*a",
-    "!!x", "|", ">", "'", '"', "%", "@", "\t", "\n", "\r", "\x00", "\u202e", "\ufeff", "é", "½", "Å", "µΩ", "/sq", "^9", "**",
-    "1/0", "²", "×10^", "±", "nan", ".inf", "~", "true", "---", "...", "<<", "?", "0", "9" * 50, "()" * 9, "e", "°C",
+    "!!x", "|", ">", "'", '"', "%", "@", "\t", "\n", "\r", "\x00", "\u202e", "\ufeff", "é", "½", "Å", "µΩ", "/sq", "^9",
+    "**", "1/0", "²", "×10^", "±",
+    "nan", ".inf", "~", "true", "---", "...", "<<", "?", "0", "9" * 50, "()" * 9, "e", "°C",
 ])  # fmt: skip
 EDITS = st.lists(st.tuples(st.floats(0, 1), st.integers(0, 12), SPARKS | st.text(max_size=6)), min_size=1, max_size=6)
 
@@ -114,12 +117,13 @@ def test_mutated_imprints(write, edits):
     outcome(write(record=None, imprint=edited(IMPRINT, edits)))
 
 
-KEYS = st.sampled_from(
-    "name formula structure lattice space_group a b c c_over_a alpha beta gamma atoms element position occupancy cif"
-    " electrons valence density dimension effective_mass valleys charge measured resistivity sheet_resistance"
-    " residual_resistivity refractive_index photon_energy n k specimens form thickness grain_size specularity cautions"
-    " text hazard review state by date notes value at from note recalled Cu Ti".split()
-).map(written_key)
+def keys_of(schema: dict) -> set[str]:
+    """Every key that a schema knows, at any depth."""
+    parts = [*schema.get("properties", {}).values(), *([schema["items"]] if "items" in schema else [])]
+    return set(schema.get("properties", {})).union(*map(keys_of, parts))
+
+
+KEYS = st.sampled_from([*sorted(keys_of(record_schema())), "Cu", "Ti"])
 WORDS = st.sampled_from([
     *("Cu", "TiN", "fcc", "hcp", "rhombohedral", "225", "1/4", "x.cif", "film", "cube", "hole", "H300", "reviewed"),
     *("3.6 Å", "1.7(1) µΩ cm", "293 K", "20 °C", "1e19 cm^-3", "90°", "2026-11-02", "-3", "0", "1", "2"),
@@ -134,6 +138,14 @@ def test_random_trees(write, tree, base):
     if base:
         tree = {"name": "X", "formula": "Cu"} | tree
     outcome(write(record=yaml.safe_dump(tree, allow_unicode=True)))
+
+
+@settings(max_examples=500, deadline=None)
+@given(tree=st.dictionaries(KEYS.map(canonical_key), TREES, max_size=6), base=st.booleans())
+def test_the_quick_look_never_accepts_what_the_library_would_not(tree, base):
+    if base:
+        tree = {"name": "X", "formula": "Cu"} | tree
+    assert validator().is_valid(tree) or not fits(tree, canonical_schema())
 
 
 SECTIONS = {
@@ -152,7 +164,7 @@ def test_plausible_records(write, data, formula):
         chosen = data.draw(
             st.dictionaries(st.sampled_from(keys), PLAUSIBLE | st.lists(PLAUSIBLE, max_size=3), max_size=4)
         )
-        record[section] = {written_key(key): value for key, value in chosen.items()}
+        record[section] = chosen
     outcome(write(record=yaml.safe_dump(record, allow_unicode=True)))
 
 
