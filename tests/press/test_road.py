@@ -15,7 +15,7 @@ from pathlib import Path
 import pytest
 from support.sites import contents
 
-from sheetgen.press import press
+from sheetgen.press import deviations, press
 
 SOME = ("aluminium", "copper", "gallium-arsenide-n", "gallium-arsenide-quantum-well", "lead", "sodium")
 PRESS = "import sys; from sheetgen.press import press; press(__import__('pathlib').Path(sys.argv[1]), sys.argv[2])"
@@ -124,6 +124,7 @@ def test_real_press_killed_at_any_time_leaves_the_old_site_or_the_new(small_hand
         time.sleep(life * (0.45 + 0.05 * moment))
         process.send_signal(signal.SIGKILL)
         process.communicate()
+        assert deviations(site) == []
         assert contents(site) in (old, new)
     press(small_handbook, site)
     assert contents(site) == new
