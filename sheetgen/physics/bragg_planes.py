@@ -9,6 +9,8 @@ follow from its arcs: closed forms throughout, nothing is sampled and nothing it
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 import numpy as np
 
 from sheetgen.physics.crystals import reciprocal_basis
@@ -29,13 +31,21 @@ def zone_occupation(cell: np.ndarray, primitive: np.ndarray, fermi_wavevector: f
     tenth of a second. Empty for NaN, for no electrons and beyond LARGEST_FILLING zones.
     """
     basis = reciprocal_basis(np.asarray(primitive, float) @ np.asarray(cell, float))
-    zone = abs(np.linalg.det(basis))
-    if not 0 < 4 * np.pi / 3 * fermi_wavevector**3 <= LARGEST_FILLING * zone:
+    unit = np.cbrt(abs(np.linalg.det(basis)))
+    radius = fermi_wavevector / unit
+    if not 0 < 4 * np.pi / 3 * radius**3 <= LARGEST_FILLING:
         return np.empty(0)
-    indices = vectors_within(basis, 2 * fermi_wavevector)[1:]
-    one_of_each_pair = indices[[tuple(index) > (0, 0, 0) for index in indices]] @ basis
-    volumes = layer_volumes(one_of_each_pair / fermi_wavevector)
-    parts = volumes * fermi_wavevector**3 / zone
+    return _occupation(tuple(np.round(basis / unit, 12).ravel().tolist()), round(float(radius), 12)).copy()
+
+
+# Metals of one structure and valence fill their zones alike, whatever their lattice constant.
+@lru_cache(maxsize=1024)
+def _occupation(shape: tuple[float, ...], radius: float) -> np.ndarray:
+    """Filled parts for a reciprocal basis (9 numbers) of unit volume."""
+    basis = np.array(shape).reshape(3, 3)
+    indices = vectors_within(basis, 2 * radius)[1:]
+    one_of_each_pair = indices[[tuple(index) > (0, 0, 0) for index in indices.tolist()]] @ basis
+    parts = layer_volumes(one_of_each_pair / radius) * radius**3
     parts = np.where(np.abs(parts - 1) < _SNAP, 1.0, np.where(parts < _SNAP, 0.0, parts))
     return parts[: np.flatnonzero(parts)[-1] + 1]
 

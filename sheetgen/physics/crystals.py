@@ -13,6 +13,8 @@ from sheetgen.physics.lattices import box, reduction, vectors_within
 # A coordinate this near to a fraction with one of these denominators is meant to be that fraction.
 SNAP = 1e-3
 DENOMINATORS = (1, 2, 3, 4, 5, 6, 8, 12)
+_FRACTIONS = np.unique([n / d for d in DENOMINATORS for n in range(d)])
+_ENTRIES = 200_000  # vectors between sites held at once
 # A reflection is missing where |S|² is at most this part of (ΣZ)².
 MISSING_REFLECTION = 1e-9
 
@@ -60,11 +62,10 @@ def reciprocal_basis(cell: np.ndarray) -> np.ndarray:
 
 def ideal_fractions(positions: np.ndarray) -> np.ndarray:
     """The positions modulo 1, with every coordinate that is nearly a simple fraction made that fraction."""
-    positions = np.array(positions, float) % 1.0
-    for denominator in reversed(DENOMINATORS):
-        rounded = np.round(positions * denominator) / denominator
-        positions = np.where(np.abs(positions - rounded) <= SNAP, rounded, positions)
-    return positions % 1.0
+    positions = np.asarray(positions, float) % 1.0
+    fractions = np.append(_FRACTIONS, 1.0)
+    nearest = fractions[np.abs(positions[..., None] - fractions).argmin(axis=-1)]
+    return np.where(np.abs(positions - nearest) <= SNAP, nearest, positions) % 1.0
 
 
 def merge_coincident_sites(positions: np.ndarray, occupancies: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
@@ -96,7 +97,7 @@ def neighbour_shells(
     reduced = transform @ cell
     places = places @ np.linalg.inv(transform)
     # The multiples of the shortest lattice vector are distances too, so the search ends by shells·|b₁|.
-    radius = 1.5 * np.cbrt(abs(np.linalg.det(reduced)) / len(places))
+    radius = 2.05 * np.cbrt(abs(np.linalg.det(reduced)) / len(places))
     while True:
         vectors, distances, counts = _pairs_within(reduced, places, weights, radius)
         starts = _shell_starts(distances, shells, tolerance)
@@ -171,17 +172,16 @@ def _wrapped(fractions: np.ndarray) -> np.ndarray:
 
 def _pairs_within(cell, places, weights, radius):
     """Vectors (fractions), distances and weights of the pairs of sites up to radius apart, by distance."""
-    bounds = np.floor(radius * np.linalg.norm(np.linalg.inv(cell).T, axis=1) + 0.5 + 1e-9)
-    images = box(bounds)
-    vectors, distances, counts = [], [], []
-    for place, weight in zip(places, weights, strict=True):
-        steps = (_wrapped(places - place)[:, None, :] + images).reshape(-1, 3)
-        lengths = np.linalg.norm(steps @ cell, axis=1)
-        near = (lengths <= radius) & (lengths > 0)
-        vectors.append(steps[near])
-        distances.append(lengths[near])
-        counts.append(np.full(near.sum(), weight))
-    vectors, distances, counts = (np.concatenate(part) for part in (vectors, distances, counts))
+    images = box(radius * np.linalg.norm(np.linalg.inv(cell), axis=0) + 0.5 + 1e-9)
+    found = []
+    at_once = max(_ENTRIES // (len(places) * len(images)), 1)
+    for start in range(0, len(places), at_once):
+        centres = places[start : start + at_once, None]
+        steps = _wrapped(places - centres)[:, :, None] + images
+        lengths = np.linalg.norm(steps @ cell, axis=-1)
+        centre, _, _ = near = np.nonzero((lengths <= radius) & (lengths > 0))
+        found.append((steps[near], lengths[near], weights[start + centre]))
+    vectors, distances, counts = (np.concatenate(part) for part in zip(*found, strict=True))
     order = np.argsort(distances, kind="stable")
     return vectors[order], distances[order], counts[order]
 

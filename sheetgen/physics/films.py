@@ -29,9 +29,7 @@ def film_fermi_wavevector(density: np.ndarray, thickness: np.ndarray, degeneracy
     return _wavevector(np.asarray(density, float) * thickness, thickness, degeneracy)
 
 
-def neutral_film_fermi_wavevector(
-    density: np.ndarray, thickness: np.ndarray, degeneracy: np.ndarray
-) -> np.ndarray:
+def neutral_film_fermi_wavevector(density: np.ndarray, thickness: np.ndarray, degeneracy: np.ndarray) -> np.ndarray:
     """The same with each wall moved out by 3π/8k_F, which keeps the surface neutral.
 
     The nd electrons per area stay; k_F is that of the bulk. J. Bardeen, Physical Review 49, 653 (1936).
@@ -83,9 +81,10 @@ def film_factor(kappa: np.ndarray, alpha: np.ndarray, specularity: np.ndarray) -
     """
     arrays = np.broadcast_arrays(*(np.asarray(array, float) for array in (kappa, alpha, specularity)))
     flat = [array.ravel() for array in arrays]
-    conductance = np.empty(flat[0].size)
-    for start in range(0, conductance.size, _ROWS):
-        rows = slice(start, start + _ROWS)
+    conductance = np.full(flat[0].size, np.nan)
+    known = np.flatnonzero(~np.isnan(sum(flat)))  # most entries of a table of materials have no film
+    for start in range(0, known.size, _ROWS):
+        rows = known[start : start + _ROWS]
         conductance[rows] = _conductance(*(array[rows] for array in flat))
     return (1 / conductance).reshape(arrays[0].shape)[()]
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
 from itertools import product
 
 import numpy as np
@@ -16,16 +17,14 @@ def reduction(basis: np.ndarray) -> np.ndarray:
     In three dimensions the first row is then a shortest vector of the lattice. Greedy reduction after
     P. Q. Nguyen and D. Stehlé, ACM Transactions on Algorithms 5, 46 (2009).
     """
-    basis = np.asarray(basis, float)
-    transform = np.eye(3)
+    members = [_Member(row, unit) for row, unit in zip(np.asarray(basis, float).tolist(), _UNITS, strict=True)]
     while True:
-        transform = transform[np.argsort(_lengths(transform @ basis), kind="stable")]
-        transform[:2] = _reduce_pair(transform[:2], basis)
-        before = _lengths(transform @ basis)
-        transform[2] = _subtract_nearest(transform, basis)
-        after = _lengths(transform @ basis)
-        if after[2] >= before[1] * _GAIN:
-            return transform.round()
+        members.sort(key=lambda member: member.square)
+        members[:2] = _reduce_pair(*members[:2])
+        third = _nearest_removed(*members)
+        if third.square >= members[1].square * _GAIN:
+            return np.array([members[0].coefficients, members[1].coefficients, third.coefficients], float)
+        members[2] = third
 
 
 def reduced_basis(basis: np.ndarray) -> np.ndarray:
@@ -41,40 +40,71 @@ def vectors_within(basis: np.ndarray, radius: float) -> np.ndarray:
     """
     transform = reduction(basis)
     reduced = transform @ basis
-    bounds = np.floor(radius * _lengths(np.linalg.inv(reduced).T) + 1e-9).astype(int)
-    coefficients = box(bounds)
-    lengths = _lengths(coefficients @ reduced)
+    coefficients = box(radius * np.linalg.norm(np.linalg.inv(reduced), axis=0) + 1e-9)
+    lengths = np.linalg.norm(coefficients @ reduced, axis=1)
     inside = np.flatnonzero(lengths <= radius * (1 + 1e-12))
     inside = inside[np.argsort(lengths[inside], kind="stable")]
     return coefficients[inside] @ transform
 
 
 def box(bounds: np.ndarray) -> np.ndarray:
-    """Every integer triple (M, 3) with |n_i| ≤ bounds_i."""
+    """Every integer triple (M, 3) with |n_i| ≤ bounds_i. Do not write into it: boxes are shared."""
+    return _box(*(int(bound) for bound in bounds))
+
+
+@lru_cache(maxsize=64)
+def _box(*bounds: int) -> np.ndarray:
     axes = [np.arange(-bound, bound + 1.0) for bound in bounds]
     return np.stack(np.meshgrid(*axes, indexing="ij"), axis=-1).reshape(-1, 3)
 
 
-def _lengths(vectors: np.ndarray) -> np.ndarray:
-    return np.linalg.norm(vectors, axis=-1)
+_UNITS = ((1, 0, 0), (0, 1, 0), (0, 0, 1))
 
 
-def _reduce_pair(pair: np.ndarray, basis: np.ndarray) -> np.ndarray:
-    """Lagrange's reduction of two vectors given by their coefficients."""
-    short, long = pair
+class _Member:
+    """A lattice vector with its coefficients; plain numbers, since arrays of three cost more than they save."""
+
+    __slots__ = ("coefficients", "square", "vector")
+
+    def __init__(self, vector, coefficients) -> None:
+        self.vector, self.coefficients = vector, coefficients
+        self.square = self.dot(self)
+
+    def dot(self, other: _Member) -> float:
+        (a, b, c), (x, y, z) = self.vector, other.vector
+        return a * x + b * y + c * z
+
+    def less(self, count: int, other: _Member) -> _Member:
+        """This vector less so many times the other."""
+        if not count:
+            return self
+        return _Member(
+            [a - count * b for a, b in zip(self.vector, other.vector, strict=True)],
+            [a - count * b for a, b in zip(self.coefficients, other.coefficients, strict=True)],
+        )
+
+
+def _reduce_pair(short: _Member, long: _Member) -> tuple[_Member, _Member]:
+    """Lagrange's reduction of two vectors."""
     while True:
-        step = np.round((short @ basis) @ (long @ basis) / ((short @ basis) @ (short @ basis)))
-        long = long - step * short
-        if _lengths(long @ basis) >= _lengths(short @ basis) * _GAIN:
-            return np.array([short, long])
+        long = long.less(round(short.dot(long) / short.square), short)
+        if long.square >= short.square * _GAIN:
+            return short, long
         short, long = long, short
 
 
-def _subtract_nearest(transform: np.ndarray, basis: np.ndarray) -> np.ndarray:
+def _nearest_removed(first: _Member, second: _Member, third: _Member) -> _Member:
     """The third vector less the vector nearest to it in the reduced lattice of the first two."""
-    plane, third = transform[:2] @ basis, transform[2] @ basis
-    centre = np.round(np.linalg.solve(plane @ plane.T, plane @ third))
-    candidates = [transform[2] - (centre + shift) @ transform[:2] for shift in product((0, -1, 1), repeat=2)]
-    lengths = [_lengths(candidate @ basis) for candidate in candidates]
-    best = int(np.argmin(lengths))
-    return candidates[0] if lengths[best] >= lengths[0] * _GAIN else candidates[best]
+    cross = first.dot(second)
+    area = first.square * second.square - cross * cross
+    one, two = first.dot(third), second.dot(third)
+    centre = (
+        round((second.square * one - cross * two) / area),
+        round((first.square * two - cross * one) / area),
+    )
+    best = third.less(centre[0], first).less(centre[1], second)
+    for shift in product((-1, 0, 1), repeat=2):
+        candidate = third.less(centre[0] + shift[0], first).less(centre[1] + shift[1], second)
+        if candidate.square < best.square * _GAIN:
+            best = candidate
+    return best

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from functools import lru_cache
 
 import numpy as np
 
@@ -39,20 +40,26 @@ def zone_polyhedron(cell: np.ndarray, primitive: np.ndarray) -> Polyhedron:
     No point of it is farther from Γ than half the root of the summed squares of the edges of a reduced cell,
     so the planes up to there are all that can bound it.
     """
-    from scipy.spatial import HalfspaceIntersection  # here: its import costs more than most runs need
-
     basis = reduced_basis(reciprocal_basis(np.asarray(primitive, float) @ np.asarray(cell, float)))
     unit = np.linalg.norm(basis[0])
-    diagonal = np.sqrt((basis**2).sum())
-    vectors = vectors_within(basis, diagonal)[1:] @ basis / unit
+    zone = _zone_of_shape(tuple(np.round(basis / unit, 12).ravel().tolist()))
+    return replace(zone, vertices=zone.vertices * unit, distances=zone.distances * unit)
+
+
+@lru_cache(maxsize=256)
+def _zone_of_shape(shape: tuple[float, ...]) -> Polyhedron:
+    """The zone of a reduced reciprocal basis (9 numbers) whose shortest vector has length 1."""
+    from scipy.spatial import HalfspaceIntersection  # here: its import costs more than most runs need
+
+    basis = np.array(shape).reshape(3, 3)
+    vectors = vectors_within(basis, np.sqrt((basis**2).sum()))[1:] @ basis
     lengths = np.linalg.norm(vectors, axis=1)
     normals, distances = vectors / lengths[:, None], lengths / 2
     corners = HalfspaceIntersection(np.column_stack([normals, -distances]), np.zeros(3)).intersections
     vertices = _distinct(corners)
     faces = [_ring(vertices, normal, distance) for normal, distance in zip(normals, distances, strict=True)]
     real = [number for number, ring in enumerate(faces) if len(ring) > 2]
-    rings = tuple(faces[number] for number in real)
-    return Polyhedron(vertices * unit, rings, normals[real], distances[real] * unit)
+    return Polyhedron(vertices, tuple(faces[number] for number in real), normals[real], distances[real])
 
 
 def _distinct(points: np.ndarray) -> np.ndarray:
