@@ -35,7 +35,7 @@ def zone_occupation(cell: np.ndarray, primitive: np.ndarray, fermi_wavevector: f
     radius = fermi_wavevector / unit
     if not 0 < 4 * np.pi / 3 * radius**3 <= LARGEST_FILLING:
         return np.empty(0)
-    return _occupation(tuple(np.round(basis / unit, 12).ravel().tolist()), round(float(radius), 12)).copy()
+    return _occupation(tuple(np.round(basis / unit, 14).ravel().tolist()), round(float(radius), 14)).copy()
 
 
 # Metals of one structure and valence fill their zones alike, whatever their lattice constant.

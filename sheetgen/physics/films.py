@@ -102,11 +102,13 @@ def explaining_specularity(ratio: np.ndarray, kappa: np.ndarray, alpha: np.ndarr
     ratio, kappa, alpha = np.broadcast_arrays(*(np.asarray(a, float) for a in (ratio, kappa, alpha)))
     flat = [array.ravel() for array in (ratio, kappa, alpha)]
 
-    def excess(specularity: np.ndarray, where: np.ndarray) -> np.ndarray:
+    def excess(diffuseness: np.ndarray, where: np.ndarray) -> np.ndarray:
         measured, thickness, grains = (array[where] for array in flat)
-        return 1 / film_factor(thickness, grains, specularity) - 1 / measured
+        return film_factor(thickness, grains, (1 - diffuseness) / (1 + diffuseness)) / measured - 1
 
-    return bracketed_root(excess, np.zeros(ratio.size), np.ones(ratio.size)).reshape(ratio.shape)[()]
+    # In q = (1 − p)/(1 + p) the resistivity of a thin film is nearly straight.
+    diffuseness = bracketed_root(excess, np.zeros(ratio.size), np.ones(ratio.size))
+    return ((1 - diffuseness) / (1 + diffuseness)).reshape(ratio.shape)[()]
 
 
 def explaining_grain_reflection(

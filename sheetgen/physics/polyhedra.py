@@ -42,7 +42,7 @@ def zone_polyhedron(cell: np.ndarray, primitive: np.ndarray) -> Polyhedron:
     """
     basis = reduced_basis(reciprocal_basis(np.asarray(primitive, float) @ np.asarray(cell, float)))
     unit = np.linalg.norm(basis[0])
-    zone = _zone_of_shape(tuple(np.round(basis / unit, 12).ravel().tolist()))
+    zone = _zone_of_shape(tuple(np.round(basis / unit, 14).ravel().tolist()))
     return replace(zone, vertices=zone.vertices * unit, distances=zone.distances * unit)
 
 
