@@ -40,7 +40,7 @@ class Handbook:
         draws at least, and the word on whether its first-order uncertainty is valid.
         """
         folder = read_folder(Path(path))
-        declared = registry()
+        declared = registry_of(folder.imprint)
         log = FaultLog()
         check_thresholds(folder.imprint, declared.assumptions, log)
         log.raise_if_any()
@@ -55,6 +55,15 @@ class Handbook:
             if sheet.record.slug == slug:
                 return sheet
         raise KeyError(slug)
+
+
+def registry_of(imprint: Imprint) -> Registry:
+    """Every quantity of a handbook: ours, and those of the file that its imprint names, read anew each time."""
+    if imprint.own_quantities is None:
+        return registry()
+    from sheetgen.quantities.own import registry_with_own
+
+    return registry_with_own(imprint.own_quantities)
 
 
 def derive(

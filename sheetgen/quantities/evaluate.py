@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import re
+import traceback
 from collections.abc import Collection, Mapping
 
 import numpy as np
@@ -9,6 +11,16 @@ import numpy as np
 from sheetgen.faults import Fault, FaultsError, Place
 from sheetgen.quantities.declaration import Assumption, Definition
 from sheetgen.quantities.registry import Plan
+
+# What NumPy says of a function that is not written for whole arrays, and how to write it.
+_MENDS = (
+    ("truth value", "take np.where(condition, …, …) instead of if, for a whole array at once"),
+    ("can be converted to Python scalars", "take NumPy's function, such as np.sqrt, instead of one of math"),
+    ("must be real number", "take NumPy's function, such as np.sqrt, instead of one of math"),
+    ("read-only", "make a new array instead of changing the one that was given"),
+    ("expected (draws", "keep to NumPy operations on whole arrays, which keep their shape"),
+)
+_DEFAULT_MEND = "mend this line; the arguments are arrays of the shape (draws, materials, entries)"
 
 
 def evaluate(plan: Plan, given: Mapping[str, np.ndarray], only: Collection[str] | None = None) -> dict[str, np.ndarray]:
@@ -45,13 +57,18 @@ def _call(declared: Definition | Assumption, values: Mapping[str, np.ndarray]) -
         with np.errstate(all="ignore"):
             result = np.asarray(declared.function(*arguments), dtype=float)
     except Exception as error:
-        raise _failure(declared, f"{type(error).__name__}: {error}") from error
+        raise _failure(declared, f"{type(error).__name__}: {error}", error) from error
     rows = max((np.shape(argument)[1] for argument in arguments), default=1)
     if result.ndim < 3 or result.shape[1] != rows:
         raise _failure(declared, f"it returned the shape {result.shape}, expected (draws, {rows}, entries)")
     return np.where(np.isfinite(result), result, np.nan)
 
 
-def _failure(declared: Definition | Assumption, what: str) -> FaultsError:
-    place = Place(declared.place.file, declared.place.line)
-    return FaultsError([Fault(place, f"{declared.function.__name__}() cannot be evaluated: {what}")])
+def _failure(declared: Definition | Assumption, what: str, error: Exception | None = None) -> FaultsError:
+    """The line of the declaring file where it happened, what did, and how to mend it."""
+    frames = traceback.extract_tb(error.__traceback__) if error else []
+    lines = [frame.lineno for frame in frames if frame.filename == declared.place.file]
+    place = Place(declared.place.file, (lines[-1] if lines else None) or declared.place.line)
+    said = re.sub(r"\s+", " ", what).rstrip(".")
+    mend = next((mend for part, mend in _MENDS if part in said), _DEFAULT_MEND)
+    return FaultsError([Fault(place, f"{declared.function.__name__}() cannot be evaluated: {said}; {mend}.")])
