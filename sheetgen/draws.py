@@ -18,7 +18,8 @@ from sheetgen.quantities.batch import Batch
 from sheetgen.quantities.evaluate import evaluate
 from sheetgen.uncertainty import Derived, Number
 
-COVERAGE = 0.95
+ENDS = (0.025, 0.975)
+FEWEST = 2  # draws in a block
 COVERAGE_FACTOR = 1.959963984540054  # of a normal distribution, for 95 %
 DIGITS = 2
 BLOCKS = 8
@@ -51,7 +52,7 @@ def draw_intervals(derived: Derived, row: int, draws: int, seed: int) -> dict[st
     blocks: dict[str, list[np.ndarray]] = {id: [] for id in wanted}
     for values in _evaluated(derived, row, draws, seed, wanted):
         for id in wanted:
-            blocks[id].append(_block(values[id][:, 0, :]))
+            blocks[id].append(values[id][:, 0, :])
     return {id: _intervals(derived, id, row, np.stack(blocks[id])) for id in wanted}
 
 
@@ -101,28 +102,27 @@ def _drawn(batch: Batch, row: int, exponent: int, stream: np.random.SeedSequence
     return drawn
 
 
-def _block(samples: np.ndarray) -> np.ndarray:
-    """Low end, high end, mean, standard deviation and existing share of a block, shape (5, entries)."""
-    there = np.isfinite(samples).mean(axis=0)
-    # Draws that leave the range of a definition do not exist; an entry without any is NaN all through.
-    columns = [
-        column[np.isfinite(column)] if share else np.full(2, np.nan)
-        for column, share in zip(samples.T, there, strict=True)
-    ]
-    ends = [np.quantile(column, [(1 - COVERAGE) / 2, (1 + COVERAGE) / 2]) for column in columns]
-    return np.array([*np.transpose(ends), [c.mean() for c in columns], [c.std() for c in columns], there])
-
-
 def _intervals(derived: Derived, id: str, row: int, blocks: np.ndarray) -> list[Interval | None]:
-    means = blocks.mean(axis=0)
-    noise = 2 * blocks[:, :2].std(axis=0, ddof=1).max(axis=0) / sqrt(BLOCKS)
+    """Intervals from samples of shape (blocks, draws, entries)."""
     found: list[Interval | None] = []
     for entry in range(blocks.shape[2]):
         number = derived.number(id, row, entry)
-        low, high, mean, deviation, there = (float(value) for value in means[:, entry])
-        if number is None or number.standard_uncertainty is None or not np.isfinite(low):
+        # Draws that leave the range of a definition do not exist.
+        parts = [block[np.isfinite(block)] for block in blocks[:, :, entry]]
+        if number is None or number.standard_uncertainty is None or min(map(len, parts)) < FEWEST:
             found.append(None)
             continue
-        first_order = validate(number, low, high, float(noise[entry]))
-        found.append(Interval(low, high, mean, deviation, first_order, 1 - there))
+        there = np.concatenate(parts)
+        low, high = np.quantile(there, ENDS)
+        spread = np.std([np.quantile(part, ENDS) for part in parts], axis=0, ddof=1).max()
+        found.append(
+            Interval(
+                low=float(low),
+                high=float(high),
+                mean=float(there.mean()),
+                standard_deviation=float(there.std(ddof=1)),
+                first_order=validate(number, float(low), float(high), 2 * float(spread) / sqrt(BLOCKS)),
+                missing=1 - len(there) / blocks[:, :, entry].size,
+            )
+        )
     return found

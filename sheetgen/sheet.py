@@ -60,7 +60,8 @@ class Row:
         """The published definitions that apply here, in the order of the sheet."""
         order = self.derivation.registry.published(self.scope)
         plan = self.derived.plan.definitions
-        return {id: plan[id] for id in order if id in plan}
+        fitting = (id for id in order if id in plan)
+        return {id: plan[id] for id in fitting if self.specimen is None or self.specimen.form in plan[id].forms}
 
     @cached_property
     def confrontations(self) -> tuple[Confrontation, ...]:

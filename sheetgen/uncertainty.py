@@ -11,12 +11,13 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
+from sheetgen.quantities import Definition
 from sheetgen.quantities.batch import Batch
 from sheetgen.quantities.evaluate import evaluate
 from sheetgen.quantities.registry import Plan
 
 STEP = 1e-4  # relative; the error of a central difference is then near 1e-8 of the derivative
-FLAT = 1e-9  # relative change below which a quantity does not depend on the input
+FLAT = 1e-12  # relative change that is rounding: the paths of an input cancel
 
 
 @dataclass(frozen=True)
@@ -84,19 +85,31 @@ def propagate(plan: Plan, batch: Batch) -> Derived:
 
 
 def _contributions(plan: Plan, batch: Batch, nominal, name: str, k: int) -> Iterable[tuple[str, np.ndarray]]:
-    """∂f/∂x · u(x) for one input, by central differences through the quantities' own functions."""
-    reached = {id for id in plan.readers.get(name, ()) if plan.definitions[id].carries_uncertainty}
-    reached -= {id for id in reached if plan.definitions[id].form != "number"}
+    """∂f/∂x · u(x) for one input, by central differences through the quantities' own functions.
+
+    A kinked quantity has a slope that says nothing over the width of u(x): it takes the difference of the values at
+    x ± u(x) in the derivative's place (GUM 5.1.3, note 2).
+    """
     uncertainty = batch.uncertainties[name][:, k]
     here = batch.values[name][0, :, k]
-    step = np.where(uncertainty > 0, np.where(here == 0, uncertainty / 100, np.abs(here) * STEP), 0.0)
-    moved = np.repeat(batch.values[name], 2, axis=0)
-    moved[0, :, k] += step
-    moved[1, :, k] -= step
-    shifted = evaluate(plan, {**nominal, name: moved}, only=reached)
-    for id in plan.definitions:
-        if id in reached and nominal[id].ndim == 3:
-            yield id, _slope(nominal[id][0], shifted[id], step[:, np.newaxis]) * uncertainty[:, np.newaxis]
+    small = np.where(here == 0, uncertainty / 100, np.abs(here) * STEP)
+    for kinked, size in ((False, small), (True, uncertainty)):
+        step = np.where(uncertainty > 0, size, 0.0)
+        wanted = [id for id in plan.readers.get(name, ()) if _propagates(plan.definitions[id], nominal[id], kinked)]
+        if wanted:
+            moved = np.repeat(batch.values[name], 2, axis=0)
+            moved[0, :, k] += step
+            moved[1, :, k] -= step
+            reached = plan.readers[name] & plan.needed_for(wanted)
+            shifted = evaluate(plan, {**nominal, name: moved}, only=reached)
+            for id in wanted:
+                slope = _slope(nominal[id][0], shifted[id], step[:, np.newaxis])
+                yield id, slope * uncertainty[:, np.newaxis]
+
+
+def _propagates(definition: Definition, value: np.ndarray, kinked: bool) -> bool:
+    number = definition.form == "number" and value.ndim == 3
+    return number and definition.carries_uncertainty and definition.kinked == kinked
 
 
 def _slope(middle: np.ndarray, shifted: np.ndarray, step: np.ndarray) -> np.ndarray:

@@ -1,5 +1,6 @@
 """What the numbers take for granted, each with an indicator that shows how far a material keeps to it."""
 
+import numpy as np
 from scipy import constants as c
 
 from sheetgen.quantities.declaration import Declarations
@@ -20,8 +21,8 @@ PRACTICE = "common practice, no source"
 def degenerate_gas(temperature, fermi_temperature):
     """Degenerate gas
 
-    Only electrons within a few k_BT of the Fermi level take part; far below the Fermi temperature they are a
-    small share, near it the formulas for T = 0 no longer hold.
+    Only electrons within a few times the thermal energy of the Fermi level take part. Far below the Fermi
+    temperature they are a small share; near it the formulas for T = 0 no longer hold.
     """
     return temperature / fermi_temperature
 
@@ -145,6 +146,58 @@ def normal_state(temperature, measured_critical_temperature):
     is not that of free electrons.
     """
     return temperature / measured_critical_temperature
+
+
+@assumption(
+    indicator="independent components of the conductivity tensor",
+    formula=r"N_\sigma",
+    strained=1,
+    broken=None,
+    source="nye1957, ch. 1",
+)
+def isotropy(tensor_components):
+    """Isotropy
+
+    All directions are alike, as in a cubic crystal. In any other, resistance and reflectance depend on the
+    direction, and one number is an average or belongs to one axis.
+    """
+    return tensor_components
+
+
+@assumption(
+    indicator="n^(1/3)·effective Bohr radius",
+    formula=r"n^{1/3} a_\mathrm{B}^*",
+    strained=0.26,
+    broken=None,
+    below=True,
+    source="edwards1978",
+)
+def delocalised_carriers(carrier_density, effective_mass, background_permittivity):
+    """Delocalised carriers
+
+    The carriers of a doped semiconductor form one gas only where the orbitals of the dopants overlap (Mott's
+    criterion); below it they freeze out onto the dopants in the cold.
+    """
+    bohr_radius = c.value("Bohr radius") * background_permittivity * c.m_e / effective_mass
+    return np.cbrt(carrier_density) * bohr_radius
+
+
+@assumption(
+    indicator="T/T_order",
+    formula=r"T/T_\mathrm{order}",
+    strained=None,
+    broken=1,
+    below=True,
+    source="ashcroft1976, ch. 33",
+    listed_by="temperature",
+)
+def magnetic_disorder(temperature, measured_magnetic_ordering_temperature):
+    """No magnetic order
+
+    The spins point either way at random but for the field. Below an ordering temperature they hold one another,
+    and the susceptibility of free electrons says nothing.
+    """
+    return temperature / measured_magnetic_ordering_temperature
 
 
 @assumption(

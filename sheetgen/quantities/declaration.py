@@ -49,7 +49,9 @@ class Definition:
 
     `listed_by` names the axis of its list, `needs` the inputs that must be there although the formula does not
     use them, `absent` says when the formula gives nothing, `stated_at` is the photon energy (eV) of an optical
-    line that is not listed by it; `drawn` is false where a value takes too long to find for thousands of draws.
+    line that is not listed by it; `drawn` is false where a value takes too long to find for thousands of draws;
+    `kinked` is true where the slope jumps within the uncertainty of an input; `forms` are the forms of specimens
+    that a line of theirs is for.
     """
 
     id: str
@@ -75,7 +77,9 @@ class Definition:
     stated_at: float | None = None
     carries_uncertainty: bool = True
     drawn: bool = True
+    kinked: bool = False
     in_specimens: bool = False
+    forms: tuple[str, ...] = ()
 
     @property
     def held_against(self) -> str | None:

@@ -12,8 +12,13 @@ FLAT = ("flat_potential",)
 FINITE = {"section": "Finite specimens"}
 CUBES = dict(listed_by="edge", in_specimens=True, **FINITE)
 COUNTS = dict(carries_uncertainty=False, **CUBES)
-FILM = {"section": "Specimens", "scope": "specimen", "assumes": FLAT + ("bulk",)}
-FILM_PATH = {"section": "Specimens", "scope": "specimen", "assumes": FLAT + ("bulk", "degenerate_gas")}
+FILM = {"section": "Specimens", "scope": "specimen", "forms": ("film",), "assumes": FLAT + ("bulk",)}
+FILM_PATH = {
+    "section": "Specimens",
+    "scope": "specimen",
+    "forms": ("film",),
+    "assumes": FLAT + ("bulk", "degenerate_gas"),
+}
 
 
 # ---------------------------------------------------------------- cubes
@@ -37,7 +42,7 @@ def volume(edge):
     formula=r"\frac{2}{V g(E_\mathrm{F})}",
     source="kubo1962",
     assumes=FLAT,
-    **CUBES,
+    **{**CUBES, "forms": ("cube", "particle")},
 )
 def level_spacing(volume, density_of_states):
     """Mean spacing of levels at the Fermi level
@@ -168,9 +173,9 @@ def edge_of_specimen(specimen_edge):
 
 
 @step(id="volume", scope="specimen")
-def volume_of_specimen(specimen_edge, specimen_diameter):
+def volume_of_specimen(specimen_edge, particle_diameter):
     """Volume of a cube or of a spherical particle."""
-    sphere = np.pi / 6 * specimen_diameter**3
+    sphere = np.pi / 6 * particle_diameter**3
     return np.where(np.isnan(specimen_edge), sphere, specimen_edge**3)
 
 
@@ -227,6 +232,7 @@ def film_subbands(electron_density, specimen_thickness, degeneracy):
     formula=r"\frac{\hbar^2 k^2}{2 m}, \quad "
     r"n d = \frac{g}{4 \pi} \sum_j \left( k^2 - \left( \frac{\pi j}{d} \right)^2 \right)",
     source="schulte1976",
+    kinked=True,
     **FILM,
 )
 def film_fermi_energy(electron_density, specimen_thickness, degeneracy, effective_mass):
@@ -243,6 +249,7 @@ def film_fermi_energy(electron_density, specimen_thickness, degeneracy, effectiv
     unit="1",
     formula=r"\frac{E_\mathrm{F,film}}{E_\mathrm{F}}",
     source="schulte1976",
+    kinked=True,
     **FILM,
 )
 def film_fermi_energy_ratio(film_fermi_energy, fermi_energy):
@@ -256,6 +263,7 @@ def film_fermi_energy_ratio(film_fermi_energy, fermi_energy):
     formula=r"\frac{\hbar^2 k^2}{2 m}, \quad n d = \frac{g}{4 \pi} \sum_j \left( k^2 - "
     r"\left( \frac{\pi j}{d'} \right)^2 \right), \quad d' = d + \frac{3 \pi}{4 k_\mathrm{F}}",
     source="schulte1976; bardeen1936",
+    kinked=True,
     **FILM,
 )
 def film_fermi_energy_neutral(electron_density, specimen_thickness, degeneracy, effective_mass, fermi_wavevector):

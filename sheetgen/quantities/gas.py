@@ -10,6 +10,7 @@ declarations = Declarations()
 quantity, step = declarations.quantity, declarations.step
 BOTH = (3, 2)
 FLAT = ("flat_potential",)
+FERMI = FLAT + ("delocalised_carriers",)
 GAS = {"section": "Electron gas at T = 0"}
 COULOMB = c.e**2 / (4 * np.pi * c.epsilon_0)
 BOHR_RADIUS = c.value("Bohr radius")
@@ -168,7 +169,7 @@ def fermi_wavelength(fermi_wavevector):
     unit="eV",
     formula=r"\frac{\hbar^2 k_\mathrm{F}^2}{2 m}",
     source="ashcroft1976, ch. 2",
-    assumes=FLAT,
+    assumes=FERMI,
     dimensions=BOTH,
     **GAS,
 )
@@ -185,7 +186,7 @@ def fermi_energy(fermi_wavevector, effective_mass):
     unit="K",
     formula=r"\frac{E_\mathrm{F}}{k_\mathrm{B}}",
     source="ashcroft1976, ch. 2",
-    assumes=FLAT,
+    assumes=FERMI,
     dimensions=BOTH,
     **GAS,
 )
@@ -199,7 +200,7 @@ def fermi_temperature(fermi_energy):
     unit="m/s",
     formula=r"\left( \frac{2 E_\mathrm{F}}{m_\mathrm{c}} \right)^{1/2}",
     source="ashcroft1976, ch. 2",
-    assumes=FLAT,
+    assumes=FERMI,
     dimensions=BOTH,
     **GAS,
 )

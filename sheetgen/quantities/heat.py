@@ -12,6 +12,7 @@ HEAT = {"section": "Heat and magnetism"}
 FLAT = ("flat_potential",)
 DEGENERATE = FLAT + ("degenerate_gas",)
 INDEPENDENT = DEGENERATE + ("independent_electrons",)
+MAGNETIC = INDEPENDENT + ("magnetic_disorder",)
 BOHR_MAGNETON = c.value("Bohr magneton")
 
 
@@ -162,7 +163,7 @@ def heat_crossover_temperature(
     unit="1",
     formula=r"\mu_0 \mu_\mathrm{B}^2 g(E_\mathrm{F})",
     source="ashcroft1976, ch. 31",
-    assumes=INDEPENDENT,
+    assumes=MAGNETIC,
     **HEAT,
 )
 def pauli_susceptibility(density_of_states):
@@ -178,7 +179,7 @@ def pauli_susceptibility(density_of_states):
     unit="1",
     formula=r"-\frac{\chi_\mathrm{P}}{3} \left( \frac{m_\mathrm{e}}{m} \right)^2",
     source="ashcroft1976, ch. 31",
-    assumes=INDEPENDENT,
+    assumes=MAGNETIC,
     **HEAT,
 )
 def landau_susceptibility(pauli_susceptibility, effective_mass):
@@ -194,7 +195,7 @@ def landau_susceptibility(pauli_susceptibility, effective_mass):
     unit="1",
     formula=r"\chi_\mathrm{P} + \chi_\mathrm{L}",
     source="ashcroft1976, ch. 31",
-    assumes=INDEPENDENT,
+    assumes=MAGNETIC,
     comparison=Comparison(
         measured="susceptibility",
         ratio="susceptibility ratio",

@@ -98,6 +98,19 @@ def _angle(name: str) -> Callable[..., Sequence[Entry]]:
     return pick
 
 
+def _tensor_components(record: Record, imprint: Imprint) -> Sequence[Entry]:
+    """How many numbers a symmetric tensor such as the conductivity has in the crystal: Nye (1957), table 4."""
+    crystal = record.crystal
+    if crystal is None:
+        return [None]
+    free_angles = sum(isinstance(angle, Value) for angle in (crystal.alpha, crystal.beta, crystal.gamma))
+    if crystal.angles_tied or (crystal.b is None and (crystal.c or crystal.c_over_a)):
+        return [2.0]
+    if crystal.b is None:
+        return [1.0]
+    return [{0: 3.0, 1: 4.0}.get(free_angles, 6.0)]
+
+
 def _valence(record: Record, imprint: Imprint) -> Sequence[Entry]:
     return list((record.electrons.valence or {}).values()) or [None]
 
@@ -153,12 +166,13 @@ MEASURED_SCALARS = (
     "residual resistivity", "mass density", "heat coefficient", "debye temperature", "transport debye temperature",
     "hall coefficient", "bulk modulus", "plasma energy", "thermal conductivity", "susceptibility", "thermopower",
     "oscillation frequency", "work function", "thermal expansion", "interband threshold", "melting point",
-    "critical temperature",
+    "critical temperature", "magnetic ordering temperature",
 )  # fmt: skip
 DISPENSABLE = ("residual resistivity", "transport debye temperature")
 FILM, CUBE, ROUND = ("film",), ("cube",), ("particle", "wire")
 
 INPUTS: tuple[Input, ...] = (
+    Input("tensor_components", "", _tensor_components),
     Input("lattice_a", "a crystal structure", _cell("a")),
     Input("lattice_b", "", _cell("b")),
     Input("lattice_c", "", _cell("c")),
@@ -222,6 +236,7 @@ INPUTS: tuple[Input, ...] = (
     *(Input(f"measured_{key.replace(' ', '_')}", _title(key), _first_measured(key)) for key in MEASURED_SCALARS),
     Input("specimen_thickness", "a thickness", _specimen("thickness", *FILM), "specimen"),
     Input("specimen_diameter", "a diameter", _specimen("diameter", *ROUND), "specimen"),
+    Input("particle_diameter", "a diameter", _specimen("diameter", "particle"), "specimen"),
     Input("specimen_edge", "an edge", _specimen("edge", *CUBE), "specimen"),
     Input("specimen_grain_size", "a grain size", _specimen("grain_size", *FILM), "specimen"),
     Input("specimen_specularity", "a specularity", _specimen("specularity", *FILM), "specimen"),

@@ -8,7 +8,7 @@ from sheetgen.quantities.declaration import Comparison, Declarations
 declarations = Declarations()
 quantity, step = declarations.quantity, declarations.step
 OPTICS = {"section": "Optics"}
-ONE_BAND = ("flat_potential", "one_band")
+ONE_BAND = ("flat_potential", "one_band", "isotropy")
 DEPTH_ENERGY = 1.96  # eV, of a helium–neon laser
 
 

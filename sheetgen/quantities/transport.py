@@ -11,7 +11,7 @@ quantity, step = declarations.quantity, declarations.step
 BOTH = (3, 2)
 TRANSPORT = {"section": "Transport"}
 FLAT = ("flat_potential",)
-DRUDE = ("defined_paths", "normal_state")
+DRUDE = ("defined_paths", "normal_state", "isotropy")
 DEGENERATE_PATHS = FLAT + ("degenerate_gas",) + DRUDE
 LORENZ = np.pi**2 * c.k**2 / (3 * c.e**2)
 FREQUENCY = 1e9  # Hz, of the skin depth
@@ -258,7 +258,7 @@ def electron_thermal_conductivity(lorenz_number, resistivity_temperature, measur
     unit="uV/K",
     formula=r"s \frac{\pi^2}{2} \frac{k_\mathrm{B}}{e} \frac{T}{T_\mathrm{F}}",
     source="ashcroft1976, ch. 2",
-    assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state"),
+    assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state", "isotropy"),
     listed_by="temperature",
     comparison=Comparison(
         measured="thermopower",
@@ -283,7 +283,7 @@ def thermopower(charge_sign, temperature, fermi_temperature):
     unit="uV/K",
     formula=r"s \frac{\pi^2}{3} \frac{k_\mathrm{B}}{e} \frac{T}{T_\mathrm{F}}",
     source="ashcroft1976, ch. 13",
-    assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state"),
+    assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state", "isotropy"),
     listed_by="temperature",
     dimensions=(2,),
     **TRANSPORT,
@@ -340,15 +340,15 @@ def transport_debye_temperature(measured_transport_debye_temperature, measured_d
     formula=r"\rho_\mathrm{res} + A \left( \frac{T}{\theta} \right)^5 "
     r"\int_0^{\theta/T} \frac{x^5}{\left( e^x - 1 \right) \left( 1 - e^{-x} \right)} \, \mathrm{d}x",
     source="grueneisen1933",
-    assumes=("normal_state",),
+    assumes=("normal_state", "isotropy"),
     listed_by="temperature",
     comparison=Comparison(
         measured="resistivity",
         ratio="resistivity ratio",
-        above="the resistivity changes otherwise with temperature than phonons of one Debye spectrum make it: it is "
-        "larger here than the curve through the reference point",
-        below="the resistivity changes otherwise with temperature than phonons of one Debye spectrum make it: it is "
-        "smaller here than the curve through the reference point",
+        above="the resistivity lies above the curve that phonons of one Debye spectrum draw through the reference "
+        "point",
+        below="the resistivity lies below the curve that phonons of one Debye spectrum draw through the reference "
+        "point",
     ),
     **TRANSPORT,
 )

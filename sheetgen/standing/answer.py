@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from math import floor, log10
 
 from sheetgen.quantities import Definition
 from sheetgen.standing.confrontation import Confrontation
@@ -79,8 +80,9 @@ def _line(one: Judged) -> AnswerLine:
 def _reason(one: Judged) -> str:
     if one.broken is not None:
         check = one.broken
-        bound = f"{check.indicator} = {check.value:.2g}, bound {check.bound:g}"
-        return f"{check.title[0].lower()}{check.title[1:]} is not given here ({bound})"
+        side = "below" if check.value < check.bound else "above"
+        found = f"{check.indicator} = {check.value:.2g}, {side} {check.bound:g}"
+        return f"rests on “{check.title.lower()}”, broken here: {found}"
     confrontation = one.confrontation
     ratio = f"measured/model = {_ratio(confrontation)}"
     if one.standing == AGREES:
@@ -91,7 +93,9 @@ def _reason(one: Judged) -> str:
 
 
 def _ratio(confrontation: Confrontation) -> str:
-    ratio, uncertainty = confrontation.ratio, confrontation.ratio_uncertainty
-    sign = "−" if ratio < 0 else ""
-    text = f"{sign}{abs(ratio):.3g}"
-    return f"{text} ± {uncertainty:.1g}" if uncertainty else text
+    """The ratio as a reader in a hurry wants it: three digits, and an uncertainty only where it shows in them."""
+    ratio, uncertainty = confrontation.ratio, confrontation.ratio_uncertainty or 0.0
+    digits = max(2 - floor(log10(abs(ratio))), 0)
+    text = f"{ratio:.{digits}f}".replace("-", "−")
+    shown = f"{uncertainty:.{digits}f}"
+    return text if float(shown) == 0 else f"{text} ± {shown}"

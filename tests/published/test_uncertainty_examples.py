@@ -269,6 +269,9 @@ def test_every_uncertainty_by_an_independent_route(routes, kind, fewest):
     for id, definition in derived.plan.definitions.items():
         if not definition.published or definition.form != "number" or not definition.carries_uncertainty:
             continue
+        if definition.kinked:
+            # Takes differences over the width of the uncertainty, held in tests/test_uncertainty.py.
+            continue
         for row in range(len(derived.batch.records)):
             for entry in range(derived.entries(id)):
                 ours = derived.number(id, row, entry)
