@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import math
-from bisect import bisect
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 from itertools import product
+
+import numpy as np
 
 from sheetgen.records.model import Crystal, Site, Value
 
@@ -15,40 +16,38 @@ DENOMINATORS = (1, 2, 3, 4, 5, 6, 8, 12)
 OVERLAP_DISTANCE = 0.5e-10
 MAXIMUM_SITES = 1000
 
-_FRACTIONS = sorted({numerator / below for below in DENOMINATORS for numerator in range(below + 1)})
+_FRACTIONS = np.array(sorted({numerator / below for below in DENOMINATORS for numerator in range(below + 1)}))
 
 
-def snapped(fraction: float) -> float:
-    """The fraction in [0, 1), replaced by the simple fraction that it stands for where one is near."""
-    inside = fraction % 1.0
-    index = bisect(_FRACTIONS, inside)
-    for near in _FRACTIONS[max(0, index - 1) : index + 1]:
-        if abs(near - inside) <= FRACTION_TOLERANCE:
-            return near % 1.0
-    return inside
+def snapped(fractions: np.ndarray) -> np.ndarray:
+    """Fractions of any shape, taken into [0, 1); those near a simple fraction are that fraction."""
+    inside = np.mod(fractions, 1.0)
+    above = np.clip(np.searchsorted(_FRACTIONS, inside), 1, len(_FRACTIONS) - 1)
+    low, high = _FRACTIONS[above - 1], _FRACTIONS[above]
+    near = np.where(inside - low < high - inside, low, high)
+    return np.where(np.abs(near - inside) <= FRACTION_TOLERANCE, near, inside) % 1.0
 
 
-def merged_sites(sites: Iterable[Site]) -> tuple[Site, ...]:
+def merged(sites: Sequence[Site]) -> tuple[Site, ...]:
     """The sites with those of one element at one position counted once, in the given order."""
-    kept: list[Site] = []
-    by_element: dict[str, list[tuple[float, float, float]]] = {}
-    for site in sites:
-        positions = by_element.setdefault(site.element, [])
-        if not _near_any(site.position, positions):
-            positions.append(site.position)
-            kept.append(site)
-    return tuple(kept)
+    elements = np.array([site.element for site in sites])
+    near = _coincident(np.array([site.position for site in sites]))
+    first = (near & (elements[:, None] == elements)).argmax(axis=1)
+    return tuple(site for index, site in enumerate(sites) if first[index] == index)
 
 
-def _near_any(position: Sequence[float], others: list[tuple[float, float, float]]) -> bool:
-    return any(
-        all(abs(_wrapped(mine - its)) <= FRACTION_TOLERANCE for mine, its in zip(position, other, strict=True))
-        for other in others
-    )
+def distinct(positions: np.ndarray) -> np.ndarray:
+    """The rows of positions (N, 3) with coincident ones counted once."""
+    return positions[_coincident(positions).argmax(axis=1) == np.arange(len(positions))]
 
 
-def _wrapped(difference: float) -> float:
-    return difference - round(difference)
+def _coincident(positions: np.ndarray) -> np.ndarray:
+    """Which pairs of positions (N, 3) are one point of the crystal, as (N, N) truth values."""
+    return np.all(np.abs(_wrapped(positions[:, None] - positions)) <= FRACTION_TOLERANCE, axis=-1)
+
+
+def _wrapped(difference: np.ndarray) -> np.ndarray:
+    return difference - np.round(difference)
 
 
 def lengths_and_angles(crystal: Crystal) -> tuple[tuple[float, float, float], tuple[float, float, float]]:
@@ -69,24 +68,21 @@ def angles_close(alpha: float, beta: float, gamma: float) -> bool:
     return 1 - sum(cosine**2 for cosine in cosines) + 2 * math.prod(cosines) > 1e-6
 
 
-def metric(crystal: Crystal) -> list[list[float]]:
-    """The metric tensor of the cell in m²: a distance squared is d·G·d for a difference d of fractions."""
-    edges, (alpha, beta, gamma) = lengths_and_angles(crystal)
-    cosines = [[1.0, math.cos(gamma), math.cos(beta)], [math.cos(gamma), 1.0, math.cos(alpha)],
-               [math.cos(beta), math.cos(alpha), 1.0]]  # fmt: skip
-    return [[edges[i] * edges[j] * cosines[i][j] for j in range(3)] for i in range(3)]
+def metric(crystal: Crystal) -> np.ndarray:
+    """The metric tensor (3, 3) in m²: a difference d of fractions is sqrt(d·G·d) long."""
+    lengths, (alpha, beta, gamma) = lengths_and_angles(crystal)
+    cosines = np.eye(3)
+    for (one, other), angle in {(1, 2): alpha, (0, 2): beta, (0, 1): gamma}.items():
+        cosines[one, other] = cosines[other, one] = math.cos(angle)
+    return np.outer(lengths, lengths) * cosines
 
 
 def overlapping(crystal: Crystal) -> tuple[Site, Site] | None:
     """Two sites that cannot both be filled as stated: nearer than OVERLAP_DISTANCE, more than one atom in sum."""
-    import numpy as np
-
     positions = np.array([site.position for site in crystal.sites])
     occupancies = np.array([site.occupancy for site in crystal.sites])
-    tensor = np.array(metric(crystal))
-    difference = positions[:, None] - positions
-    difference -= np.round(difference)
-    near = np.sum(difference @ tensor * difference, axis=-1) < OVERLAP_DISTANCE**2
+    difference = _wrapped(positions[:, None] - positions)
+    near = np.sum(difference @ metric(crystal) * difference, axis=-1) < OVERLAP_DISTANCE**2
     full = occupancies[:, None] + occupancies > 1.001
     clashes = np.argwhere(np.triu(near & full, k=1))
     return tuple(crystal.sites[index] for index in clashes[0]) if clashes.size else None
@@ -94,16 +90,12 @@ def overlapping(crystal: Crystal) -> tuple[Site, Site] | None:
 
 def nearest_neighbour_distance(crystal: Crystal) -> float:
     """The shortest distance between two sites in metres, periodic images included."""
-    import numpy as np
-
     positions = np.array([site.position for site in crystal.sites])
-    tensor = np.array(metric(crystal))
+    tensor = metric(crystal)
     images = np.array(list(product((-1, 0, 1), repeat=3)), dtype=float)
     shortest = np.inf
     for position in positions:
-        difference = positions - position
-        difference = (difference - np.round(difference))[:, None, :] + images
+        difference = _wrapped(positions - position)[:, None, :] + images
         squares = np.sum(difference @ tensor * difference, axis=-1)
-        apart = squares[squares > OVERLAP_DISTANCE**2]
-        shortest = min(shortest, apart.min(initial=np.inf))
+        shortest = squares[squares > OVERLAP_DISTANCE**2].min(initial=shortest)
     return math.sqrt(shortest)

@@ -6,6 +6,8 @@ import re
 from pathlib import Path
 from typing import TYPE_CHECKING
 
+import numpy as np
+
 from sheetgen.faults import Place
 from sheetgen.records.cells import snapped
 from sheetgen.records.elements import elements
@@ -218,13 +220,13 @@ def _atom(row: gemmi.cif.Table.Row) -> Site:
     if any(row.str(index) in "?." for index in (2, 3, 4)):
         raise UnreadableError(f"{where} has no position; expected three fractions of the cell edges")
     try:
-        position = tuple(snapped(bare_fraction(row.str(index))) for index in (2, 3, 4))
+        fractions = [bare_fraction(row.str(index)) for index in (2, 3, 4)]
         occupancy = bare_fraction(row.str(5)) if row.has(5) and row.str(5) not in "?." else 1.0
     except UnreadableError as error:
         raise UnreadableError(f"{where}: {error}") from None
     if not 0 < occupancy <= 1:
         raise UnreadableError(f"{where} has the occupancy {occupancy:g}; expected above 0 and at most 1")
-    return Site(element, position, occupancy)
+    return Site(element, tuple(snapped(np.array(fractions)).tolist()), occupancy)
 
 
 def _element(symbol: str) -> str | None:

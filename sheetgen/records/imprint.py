@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import datetime
 import re
+from contextlib import suppress
 from pathlib import Path
 
 from sheetgen.faults import Place, did_you_mean
@@ -20,8 +22,17 @@ MAXIMUM_TEMPERATURES = 50
 PAPERS = {"a4": "A4", "letter": "letter"}
 THRESHOLDS: dict[str, float | tuple[float | None, ...]] = {"agrees": 0.10, "adjust": 2.0, "undecided": 0.25}
 
-_TEXTS = ("title", "group", "edition", "licence", "language", "contact", "base_address")
-_KEYS = (*_TEXTS, "reference_temperature", "temperatures", "paper", "units", "thresholds", "own_quantities")
+_TEXTS = ("title", "group", "edition", "date", "licence", "language", "contact", "base_address")
+_KEYS = (
+    *_TEXTS,
+    "previous_edition",
+    "reference_temperature",
+    "temperatures",
+    "paper",
+    "units",
+    "thresholds",
+    "own_quantities",
+)
 _LONGEST_TEXT = 300
 _LANGUAGE = re.compile(r"[a-z]{2,3}(?:-[A-Za-z0-9]{2,8})*")
 _ADDRESS = re.compile(r"https?://[^\s\"<>\\^`{|}]+")
@@ -30,6 +41,7 @@ _MODULE = re.compile(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py")
 _NUMBER = re.compile(r"[\d.eE+-]{1,20}")
 _BARE = re.compile(r"\s*[+-]?[\d.]+\s*")
 _IDENTIFIER = re.compile(r"[a-z][a-z0-9_]{0,63}")
+_EARLIER = re.compile(r"(?:[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}/){0,4}[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}\.json")
 
 
 def default_imprint(path: Path) -> Imprint:
@@ -49,6 +61,7 @@ def read_imprint(root: Table, path: Path, reader: Reader) -> Imprint:
         reader.fault(root, "the imprint has no title; add 'title: Handbook of …'.")
     _check_form(root, "language", _LANGUAGE, "a language tag such as 'en' or 'en-GB'", reader)
     _check_form(root, "base_address", _ADDRESS, "an address such as 'https://handbook.example.org/'", reader)
+    _check_date(root, reader)
     _check_form(root, "contact", _CONTACT, "a mail address or a web address", reader)
     reference = _temperature(root.node("reference_temperature"), "reference temperature", reader)
     reference = REFERENCE_TEMPERATURE if reference is None else reference
@@ -61,6 +74,7 @@ def read_imprint(root: Table, path: Path, reader: Reader) -> Imprint:
         thresholds=THRESHOLDS | _thresholds(root.node("thresholds"), reader),
         own_quantities=_own_quantities(root.node("own_quantities"), path.parent, reader),
         place=root.place,
+        previous_edition=_previous_edition(root.node("previous_edition"), path.parent, reader),
     )
 
 
@@ -89,6 +103,16 @@ def _check_form(root: Table, key: str, form: re.Pattern[str], expected: str, rea
     text = text_of(root.node(key))
     if text and not form.fullmatch(text):
         reader.fault(root.node(key), f"{written_key(key)}: found {shown(text)}; expected {expected}.")
+
+
+def _check_date(root: Table, reader: Reader) -> None:
+    text = text_of(root.node("date"))
+    with suppress(ValueError):
+        if not text or datetime.date.fromisoformat(text).isoformat() == text:
+            return
+    if text:
+        expected = "expected the day of the edition, such as 2026-11-02"
+        reader.fault(root.node("date"), f"date: found {shown(text)}; {expected}.")
 
 
 def _temperature(node: Node | None, name: str, reader: Reader) -> float | None:
@@ -205,4 +229,16 @@ def _own_quantities(node: Node | None, folder: Path, reader: Reader) -> Path | N
         return path
     expected = "expected a name such as quantities.py"
     reader.fault(node, f"own quantities: found {found(node)}, no Python file beside handbook.yaml; {expected}.")
+    return None
+
+
+def _previous_edition(node: Node | None, folder: Path, reader: Reader) -> Path | None:
+    """The data file of the edition before this one: a file inside the folder, named but not yet read."""
+    if node is None:
+        return None
+    path = folder / text_of(node)
+    if _EARLIER.fullmatch(text_of(node)) and path.is_file() and path.resolve().is_relative_to(folder.resolve()):
+        return path
+    expected = "expected the data/handbook.json of that edition, kept in this folder, such as editions/2026-1.json"
+    reader.fault(node, f"previous edition: found {found(node)}, no such file below handbook.yaml; {expected}.")
     return None

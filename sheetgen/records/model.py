@@ -151,7 +151,10 @@ class Record:
 
 @dataclass(frozen=True, slots=True)
 class Imprint:
-    """Who publishes the handbook and how: handbook.yaml. Temperatures in K, the reference temperature first."""
+    """Who publishes the handbook and how: handbook.yaml. Temperatures in K, the reference temperature first.
+
+    `date` is the day of the edition (ISO 8601) or empty, `previous_edition` the data file of the one before it.
+    """
 
     title: str
     group: str
@@ -167,6 +170,8 @@ class Imprint:
     thresholds: dict[str, float | tuple[float | None, ...]]
     own_quantities: Path | None
     place: Place
+    date: str = ""
+    previous_edition: Path | None = None
 
 
 @dataclass(frozen=True, slots=True)

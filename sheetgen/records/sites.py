@@ -4,10 +4,11 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Mapping
-from dataclasses import replace
+
+import numpy as np
 
 from sheetgen.faults import Place, did_you_mean
-from sheetgen.records.cells import merged_sites, snapped
+from sheetgen.records.cells import merged, snapped
 from sheetgen.records.elements import elements
 from sheetgen.records.lattices import CENTRINGS, Lattice
 from sheetgen.records.model import Site
@@ -44,10 +45,13 @@ def implied_basis(lattice: Lattice, composition: Mapping[str, float]) -> list[Si
 
 def centred(basis: Iterable[Site], lattice: Lattice) -> tuple[Site, ...]:
     """The basis at every lattice point of the conventional cell."""
-    return merged_sites(
-        replace(atom, position=tuple(snapped(x + shift) for x, shift in zip(atom.position, point, strict=True)))
-        for atom in basis
-        for point in CENTRINGS[lattice.centring]
+    points = np.array(CENTRINGS[lattice.centring])
+    return merged(
+        [
+            Site(atom.element, tuple(position), atom.occupancy)
+            for atom in basis
+            for position in snapped(np.array(atom.position) + points).tolist()
+        ]
     )
 
 
@@ -83,7 +87,7 @@ def _atom(table: Table, reader: Reader) -> Site | None:
     if not 0 < occupancy <= 1:
         reader.fault(occupied, f"occupancy: {shown(occupied.text)} is out of range; expected above 0 and at most 1.")
         return None
-    return Site(element.text, tuple(map(snapped, fractions)), occupancy)
+    return Site(element.text, tuple(snapped(np.array(fractions)).tolist()), occupancy)
 
 
 def _fraction(node: Scalar, name: str, reader: Reader) -> float | None:

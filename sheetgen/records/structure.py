@@ -213,6 +213,8 @@ def _sites(table: Table, cell: Cell, composition: Mapping[str, float], reader: R
     atoms = table.node("atoms")
     try:
         basis = implied_basis(cell.lattice, composition) if atoms is None else listed_basis(atoms, reader)
+        if not basis:
+            return ()
         return expanded(basis, cell.group.operations()) if cell.group else centred(basis, cell.lattice)
     except UnreadableError as error:
         reader.unreadable(atoms or table, "atoms" if atoms else f"lattice '{cell.name}'", error)

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from typing import TYPE_CHECKING
 
-from sheetgen.records.cells import MAXIMUM_SITES, merged_sites, snapped
+import numpy as np
+
+from sheetgen.records.cells import MAXIMUM_SITES, distinct, merged, snapped
 from sheetgen.records.lattices import SHAPES, CellShape, lattice_name
 from sheetgen.records.model import Site
 from sheetgen.records.unreadable import UnreadableError, shown
@@ -70,16 +72,17 @@ def group_lattice_name(group: gemmi.SpaceGroup) -> str:
     return "rhombohedral" if system == "rhombohedral" else lattice_name(system, group.centring_type())
 
 
-def expanded(atoms: Iterable[Site], operations: Iterable[gemmi.Op]) -> tuple[Site, ...]:
+def expanded(atoms: Sequence[Site], operations: Iterable[gemmi.Op]) -> tuple[Site, ...]:
     """Every site of the cell that the atoms of the asymmetric unit stand for. Raises UnreadableError if too many."""
+    import gemmi
+
     operations = list(operations)
+    turns = np.array([operation.rot for operation in operations]) / gemmi.Op.DEN
+    shifts = np.array([operation.tran for operation in operations]) / gemmi.Op.DEN
     sites: list[Site] = []
     for atom in atoms:
-        images = (
-            Site(atom.element, tuple(map(snapped, operation.apply_to_xyz(list(atom.position)))), atom.occupancy)
-            for operation in operations
-        )
-        sites += merged_sites(images)
+        images = distinct(snapped(turns @ np.array(atom.position) + shifts))
+        sites += [Site(atom.element, tuple(image), atom.occupancy) for image in images.tolist()]
         if len(sites) > MAXIMUM_SITES:
             raise UnreadableError(f"the cell holds more than {MAXIMUM_SITES} sites; expected a smaller cell")
-    return merged_sites(sites)
+    return merged(sites)

@@ -88,6 +88,7 @@ _SYMBOLS = [
 ]
 _RAISED = re.compile("[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+")
 _OHM = re.compile(r"[\u03a9\u2126](?P<next>[A-Za-z])?")
+_HYPHEN = re.compile(r"(?<=[A-Za-z\u03a9\u2126])-(?=[A-Za-z])")  # µΩ-cm
 _PER_SQUARE = re.compile(r"\s*(?:/|\bper\b)\s*(?:sq|square|□|◻|\(sq\))$")
 _PER = re.compile(r"\s*\bper\b\s*")
 _BARE_POWER = re.compile(r"(?<=[A-Za-z])(?=[+-]?\d)")
@@ -98,6 +99,7 @@ def _ascii(text: str) -> str:
     plain = _RAISED.sub(lambda power: "^" + power[0].translate(SUPERSCRIPTS), text.translate(CHARACTERS).strip())
     for symbol, name in _SYMBOLS:
         plain = plain.replace(symbol, name)
+    plain = _HYPHEN.sub(" ", plain)
     plain = _OHM.sub(lambda ohm: f"ohm {ohm['next']}" if ohm["next"] else "ohm", plain)
     return _BARE_POWER.sub("^", _PER.sub("/", plain))
 

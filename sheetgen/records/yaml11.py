@@ -36,10 +36,9 @@ _NUMBERS = [
 def surprise(text: str) -> str | None:
     """What is wrong with a plain word, and how to write it; None for a word that every reader takes alike."""
     if _TRUTH.fullmatch(text):
-        return (
-            f'the word {shown(text)} is a truth value in YAML 1.1; write "{text}" in quotes, or true or false where'
-            " that is meant."
-        )
+        found = f"the word {shown(text)} is a truth value in YAML 1.1"
+        mend = " The day of a review is 'date'." if text.lower() == "on" else ""
+        return f'{found}; write "{text}" in quotes, or true or false where that is meant.{mend}'
     if text == "<<":
         return "'<<' merges another mapping, which is not read; write its keys out here."
     if text[:1] not in "+-0123456789":

@@ -10,6 +10,7 @@ FULL = """\
 title: A handbook
 group: Some group
 edition: 2026.1
+date: 2026-11-02
 license: CC-BY-4.0
 language: en-GB
 contact: post@example.org
@@ -20,15 +21,16 @@ paper: Letter
 units: {fermi_velocity: km/s, coordination number: "1"}
 thresholds: {agrees: 0.05, adjust: 3, undecided: 0.2, degenerate_gas: [0.2, 0.4], flat potential: [0.8, null]}
 own quantities: quantities.py
+previous edition: editions.json
 """
 KEYS = (
-    "title, group, edition, licence, language, contact, base address, reference temperature, temperatures, paper,"
-    " units, thresholds, own quantities"
+    "title, group, edition, date, licence, language, contact, base address, previous edition, reference temperature,"
+    " temperatures, paper, units, thresholds, own quantities"
 )
 
 
 def test_everything_that_an_imprint_can_say(read):
-    imprint = read(imprint=FULL, files={"quantities.py": "1 / 0"}).imprint
+    imprint = read(imprint=FULL, files={"quantities.py": "1 / 0", "editions.json": "{"}).imprint
     assert (imprint.title, imprint.group, imprint.edition) == ("A handbook", "Some group", "2026.1")
     assert (imprint.licence, imprint.language, imprint.contact) == ("CC-BY-4.0", "en-GB", "post@example.org")
     assert imprint.base_address == "https://handbook.example.org/"
@@ -39,8 +41,9 @@ def test_everything_that_an_imprint_can_say(read):
     assert imprint.thresholds == {
         "agrees": 0.05, "adjust": 3.0, "undecided": 0.2, "degenerate_gas": (0.2, 0.4), "flat_potential": (0.8, None),
     }  # fmt: skip
-    # Named, and not loaded: its only line would raise.
+    # Named, and neither loaded nor read.
     assert imprint.own_quantities == Path("m/quantities.py")
+    assert (imprint.date, imprint.previous_edition) == ("2026-11-02", Path("m/editions.json"))
 
 
 def test_defaults(read):
@@ -50,7 +53,7 @@ def test_defaults(read):
     assert imprint.reference_temperature == 293.15
     assert imprint.temperatures == (293.15, 4.2, 77.0)
     assert imprint.thresholds == {"agrees": 0.10, "adjust": 2.0, "undecided": 0.25}
-    assert imprint.own_quantities is None
+    assert (imprint.own_quantities, imprint.date, imprint.previous_edition) == (None, "", None)
 
 
 @pytest.mark.parametrize(
@@ -101,6 +104,15 @@ def test_defaults(read):
         (
             "title: x\nthresholds: {Bulk: [1, 1]}\n",
             ":2:14: 'Bulk' is no id of an assumption; expected one such as degenerate_gas.",
+        ),
+        (
+            "title: x\ndate: 2.11.2026\n",
+            ":2:7: date: found '2.11.2026'; expected the day of the edition, such as 2026-11-02.",
+        ),
+        (
+            "title: x\nprevious edition: ../other.json\n",
+            ":2:19: previous edition: found '../other.json', no such file below handbook.yaml; expected the"
+            " data/handbook.json of that edition, kept in this folder, such as editions/2026-1.json.",
         ),
         *(
             (

@@ -24,6 +24,7 @@ from sheetgen.records.unreadable import UnreadableError
         ("\u00b5\u2126 cm", "microohm * centimeter"),
         ("µΩcm", "microohm * centimeter"),
         ("μΩ·cm", "microohm * centimeter"),
+        ("µΩ-cm", "microohm * centimeter"),
         ("uohm cm", "microohm * centimeter"),
         ("nΩ m", "nanoohm * meter"),
         ("mJ/(mol K²)", "millijoule / (mole * kelvin**2)"),
