@@ -48,7 +48,9 @@ def fermi_integral_slope(order: float, eta: np.ndarray) -> np.ndarray:
     if order == 1:
         return _zeroth_order(eta)
     _check(order)
-    return _by_range(eta, lambda low: _trapezoidal(order, low, slope=True), lambda high: _degenerate(order - 1, high))
+    return _by_range(
+        eta, lambda low: _trapezoidal(order, low, slope=True), lambda high: _degenerate(order - 1, high)
+    )
 
 
 def inverse_fermi_integral(order: float, value: np.ndarray) -> np.ndarray:

@@ -29,7 +29,9 @@ def film_fermi_wavevector(density: np.ndarray, thickness: np.ndarray, degeneracy
     return _wavevector(np.asarray(density, float) * thickness, thickness, degeneracy)
 
 
-def neutral_film_fermi_wavevector(density: np.ndarray, thickness: np.ndarray, degeneracy: np.ndarray) -> np.ndarray:
+def neutral_film_fermi_wavevector(
+    density: np.ndarray, thickness: np.ndarray, degeneracy: np.ndarray
+) -> np.ndarray:
     """The same with each wall moved out by 3π/8k_F, which keeps the surface neutral.
 
     The nd electrons per area stay; k_F is that of the bulk. J. Bardeen, Physical Review 49, 653 (1936).

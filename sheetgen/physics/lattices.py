@@ -17,7 +17,9 @@ def reduction(basis: np.ndarray) -> np.ndarray:
     In three dimensions the first row is then a shortest vector of the lattice. Greedy reduction after
     P. Q. Nguyen and D. Stehlé, ACM Transactions on Algorithms 5, 46 (2009).
     """
-    members = [_Member(row, unit) for row, unit in zip(np.asarray(basis, float).tolist(), _UNITS, strict=True)]
+    members = [
+        _Member(row, unit) for row, unit in zip(np.asarray(basis, float).tolist(), _UNITS, strict=True)
+    ]
     while True:
         members.sort(key=lambda member: member.square)
         members[:2] = _reduce_pair(*members[:2])

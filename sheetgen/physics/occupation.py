@@ -110,7 +110,8 @@ def _heat_coefficients() -> tuple:
     """d_k of a^{3/2} a^{−1/2} − (a^{1/2})² = Σ d_k (π/η)^{2k}, without the vanishing d_0."""
     upper, middle, lower = (sommerfeld_coefficients(order) for order in (1.5, 0.5, -0.5))
     return tuple(
-        sum(upper[i] * lower[k - i] - middle[i] * middle[k - i] for i in range(k + 1)) for k in range(1, len(middle))
+        sum(upper[i] * lower[k - i] - middle[i] * middle[k - i] for i in range(k + 1))
+        for k in range(1, len(middle))
     )
 
 

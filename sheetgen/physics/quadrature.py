@@ -40,7 +40,9 @@ def bracketed_root(
     root = np.where(at_newest == 0, newest, np.where(at_opposite == 0, opposite, np.nan))
     open_ = np.flatnonzero(at_newest * at_opposite < 0)
     newest, opposite, at_newest, at_opposite = (a[open_] for a in (newest, opposite, at_newest, at_opposite))
-    part = np.clip(at_newest / (at_newest - at_opposite), 0.05, 0.95)  # most functions here are nearly straight
+    part = np.clip(
+        at_newest / (at_newest - at_opposite), 0.05, 0.95
+    )  # most functions here are nearly straight
     for _ in range(steps):
         if not open_.size:
             break

@@ -68,7 +68,9 @@ def standard_path(cell: np.ndarray, primitive: np.ndarray, samples: int = 240) -
             start = end
             labels.append(line[1])
             ticks.append(end)
-    return Path(special.lattice, tuple(labels), np.array(ticks), np.concatenate(points), np.concatenate(distances))
+    return Path(
+        special.lattice, tuple(labels), np.array(ticks), np.concatenate(points), np.concatenate(distances)
+    )
 
 
 def special_points(cell: np.ndarray, primitive: np.ndarray) -> SpecialPoints:
@@ -79,7 +81,9 @@ def special_points(cell: np.ndarray, primitive: np.ndarray) -> SpecialPoints:
         return _face_centres(cell, primitive)
     lattice, axes, coordinates, path = rule(cell)
     basis = reciprocal_basis(axes @ cell)
-    points = {label: np.array(fractions) @ basis for label, fractions in {"Γ": (0, 0, 0), **coordinates}.items()}
+    points = {
+        label: np.array(fractions) @ basis for label, fractions in {"Γ": (0, 0, 0), **coordinates}.items()
+    }
     return SpecialPoints(lattice, points, tuple(tuple(leg.split("-")) for leg in path.split(" ")))
 
 

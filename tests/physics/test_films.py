@@ -109,8 +109,8 @@ def test_grain_factor_against_mpmath(strength):
 
 
 def mayadas_shatzkes(kappa, strength, specularity):
-    """The double integral as printed, over φ and u = 1/t, with mpmath's rules at 20 digits."""
-    with mpmath.workdps(20):
+    """The double integral as printed, over φ and u = 1/t, with mpmath's rules at 30 digits."""
+    with mpmath.workdps(30):
         k, a, p = (mpmath.mpf(x) for x in (kappa, strength, specularity))
         f = 1 - 3 * a / 2 + 3 * a**2 - 3 * a**3 * mpmath.log(1 + 1 / a)
 
