@@ -7,7 +7,6 @@ from functools import cache
 
 import numpy as np
 
-
 # A bracket this narrow, in parts of the root, ends the search; its better end is far nearer, since the last
 # steps converge faster than the bracket does.
 _TOLERANCE = 1e-13
