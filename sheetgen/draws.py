@@ -10,7 +10,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass
-from math import ceil, floor, log2, log10, sqrt
+from math import ceil, log2, sqrt
 
 import numpy as np
 
@@ -64,7 +64,8 @@ def validate(number: Number, low: float, high: float, noise: float) -> str:
     uncertainty = number.standard_uncertainty
     expanded = COVERAGE_FACTOR * uncertainty
     off = max(abs(number.value - expanded - low), abs(number.value + expanded - high))
-    tolerance = 0.5 * 10.0 ** (floor(log10(uncertainty)) - (DIGITS - 1))
+    rounded = int(f"{uncertainty:.{DIGITS - 1}e}".partition("e")[2])
+    tolerance = 0.5 * 10.0 ** (rounded - (DIGITS - 1))
     if off + noise <= tolerance:
         return VALID
     return INVALID if off - noise > tolerance else UNRESOLVED
