@@ -5,6 +5,7 @@ from __future__ import annotations
 import base64
 import hashlib
 from collections.abc import Iterator, Mapping, Sequence
+from functools import cache
 from typing import Any
 
 from . import citations, front, quantity, reference, words
@@ -37,12 +38,18 @@ def lay_out(handbook: Any, figures: Mapping[str, Sequence[Any]]) -> Iterator[tup
     yield "sources.html", layout.page("sources.html", "", **reference.sources(handbook))
 
 
+@cache
+def _press() -> Press:
+    """The compiled templates, once a process."""
+    return Press()
+
+
 class _Layout:
     """One run: the compiled templates and what every page shares."""
 
     def __init__(self, handbook: Any):
         self.handbook = handbook
-        self.press = Press()
+        self.press = _press()
         self.known_sources = citations.all_sources(handbook)
         imprint = handbook.imprint
         self.shared = {

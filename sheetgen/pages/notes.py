@@ -12,6 +12,8 @@ _TAGS = frozenset(
     h3 h4 h5 h6 abbr del ins small""".split()  # noqa: SIM905, a list of words reads better as words
 )
 _ATTRIBUTES = {"a": {"href", "title"}, "abbr": {"title"}, "ol": {"start"}}
+# No slash at the start: such a link leads to another host, or to the root of a disk.
+_LINK = re.compile(r"(?:https?://|mailto:)[^\s<>\"]+|(?!/)[\w./%-]*(?:#[\w./%:-]+)?")
 _EMPTY_LINK = re.compile(r"<a(?: rel=\"[^\"]*\")?>(.*?)</a>", re.DOTALL)
 
 
@@ -43,8 +45,8 @@ def notes(text: str, below: int = 2) -> Markup:
 
 
 def _within_reach(tag: str, attribute: str, value: str) -> str | None:
-    """Drop links that begin with a slash: they lead outside the handbook, or to the root of a disk."""
-    return None if attribute == "href" and value.lstrip().startswith(("/", "\\")) else value
+    """Drop links that are neither to the web, nor to a person, nor to a page or place of the handbook."""
+    return None if attribute == "href" and not _LINK.fullmatch(value) else value
 
 
 def _lowered(html: str, below: int) -> str:

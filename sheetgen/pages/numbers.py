@@ -12,7 +12,7 @@ import statistics
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from decimal import ROUND_HALF_EVEN, Context, Decimal
-from functools import cache
+from functools import cache, lru_cache
 
 from markupsafe import Markup
 
@@ -24,12 +24,13 @@ SIGNIFICANT = 6
 # A double holds 15 reliable decimal digits: an uncertainty smaller than that adds nothing that could be shown.
 RELIABLE = 15
 PLAIN_MAGNITUDES = range(-3, 5)
-_ROUNDING = Context(prec=40, rounding=ROUND_HALF_EVEN)
+# Room for every digit between the largest and the smallest double.
+_ROUNDING = Context(prec=700, rounding=ROUND_HALF_EVEN)
 _SUPERSCRIPTS = str.maketrans("0123456789-", "⁰¹²³⁴⁵⁶⁷⁸⁹⁻")
 _FROM_SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺−", "0123456789-+-")
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, slots=True)
 class Printed:
     """A number ready for print: sign and digits, digits of its uncertainty (or ""), power of ten (0: none)."""
 
@@ -50,9 +51,8 @@ class Printed:
     @property
     def html(self) -> Markup:
         """The number with a real superscript."""
-        uncertainty = f'<span class="u">({self.uncertainty})</span>' if self.uncertainty else ""
         power = f"<wbr>{NARROW}{TIMES}{NARROW}10<sup>{signed(self.exponent)}</sup>" if self.exponent else ""
-        return Markup(self.digits + uncertainty + power)
+        return Markup(self.mantissa + power)
 
 
 def superscript(power: int) -> str:
@@ -65,6 +65,7 @@ def signed(power: int) -> str:
     return str(power).replace("-", MINUS)
 
 
+@lru_cache(maxsize=2**16)
 def printed(value: float, uncertainty: float | None = None, whole: bool = False) -> Printed:
     """Round a number by its standard uncertainty, or to six significant digits where it has none.
 
@@ -106,12 +107,7 @@ def _two_digits(uncertainty: float, value: Decimal) -> Decimal | None:
 
 
 def _to_place(number: Decimal, place: int) -> Decimal:
-    return number.quantize(Decimal(1).scaleb(place), context=_wide(number, place))
-
-
-def _wide(number: Decimal, place: int) -> Context:
-    """A context with room for every digit from the first of the number to the place."""
-    return Context(prec=max(_ROUNDING.prec, abs(number.adjusted() - place) + 2), rounding=ROUND_HALF_EVEN)
+    return number.quantize(Decimal((0, (1,), place)), context=_ROUNDING)
 
 
 def _concise(value: Decimal, spread: Decimal) -> Printed:
@@ -119,7 +115,7 @@ def _concise(value: Decimal, spread: Decimal) -> Printed:
     rounded = _to_place(value, place)
     magnitude = max(rounded.adjusted(), spread.adjusted()) if rounded else spread.adjusted()
     exponent = 0 if place <= 0 and magnitude in PLAIN_MAGNITUDES else magnitude
-    digits = _grouped(rounded.scaleb(-exponent, context=_wide(rounded, place)))
+    digits = _grouped(rounded.scaleb(-exponent, context=_ROUNDING))
     return Printed(digits, str(int(spread.scaleb(-place))), exponent)
 
 
@@ -128,18 +124,18 @@ def _without_uncertainty(value: Decimal, significant: int = SIGNIFICANT) -> Prin
         return Printed("0")
     rounded = _to_place(value, value.adjusted() - significant + 1)
     exponent = 0 if rounded.adjusted() in PLAIN_MAGNITUDES else rounded.adjusted()
-    return Printed(_grouped(rounded.scaleb(-exponent).normalize()), "", exponent)
+    return Printed(_grouped(rounded.scaleb(-exponent, context=_ROUNDING).normalize(_ROUNDING)), "", exponent)
 
 
 def _grouped(number: Decimal) -> str:
     """Digits with a real minus; five or more before the decimal point stand in groups of three."""
-    sign, _, text = f"{number:f}".rpartition("-")
+    _, _, text = f"{number:f}".rpartition("-")
     before, point, after = text.partition(".")
     if len(before) > 4:
         first = len(before) % 3
         groups = [before[:first], *(before[start : start + 3] for start in range(first, len(before), 3))]
         before = NARROW.join(filter(None, groups))
-    return (MINUS if number and "-" in f"{number:f}" else "") + before + point + after
+    return (MINUS if number < 0 else "") + before + point + after
 
 
 # --- columns -------------------------------------------------------------------------------------------------------
