@@ -10,7 +10,7 @@ from importlib import import_module
 
 from sheetgen.figures.plot import Figure
 
-__all__ = ["Figure", "draw_all"]
+__all__ = ["Figure", "draw_all", "draw_handbook", "draw_ranking"]
 
 # In the order of the sheet: one module each, with one function `draw(subject)`.
 MODULES = (
@@ -35,3 +35,13 @@ def draw_all(sheet, handbook) -> list[Figure]:
     subject = Subject(sheet, handbook)
     drawn = (import_module(f"sheetgen.figures.{name}").draw(subject) for name in MODULES)
     return [figure for figure in drawn if figure is not None]
+
+
+def draw_handbook(handbook, root: str = "../../") -> list[Figure]:
+    """The figures of the whole handbook; `root` leads from where they are shown to the top of the site."""
+    return import_module("sheetgen.figures.overview").draw_handbook(handbook, root)
+
+
+def draw_ranking(handbook, id: str, root: str = "../../") -> Figure | None:
+    """All materials ranked by one quantity; None where fewer than two state it."""
+    return import_module("sheetgen.figures.ranking").draw(handbook, id, root)

@@ -125,7 +125,7 @@ def _tick_labels(path: zones.Path) -> list[Note]:
 
 def _words(subject: Subject, path: zones.Path) -> str:
     return (
-        f"Energies of free electrons in the empty {path.lattice} lattice of {subject.name} along "
+        f"Energies of free electrons in the empty {path.lattice} lattice of {subject.phrase} along "
         f"{'–'.join(path.labels)} in the reduced zone, up to somewhat above the Fermi energy of "
         f"{energy(subject.si('fermi_energy'))}; circles mark where the reduced sphere of radius "
         f"{number(subject.si('fermi_wavevector') / PER_NANOMETRE)} per nanometre crosses the path."

@@ -107,7 +107,7 @@ def _words(subject: Subject) -> str:
     scale = subject.si("fermi_temperature")
     listed = enumeration([kelvin(t) for t in subject.temperatures[: len(LOOKS)]])
     return (
-        f"Occupation of the states of {subject.name} near the Fermi level at {listed}, and the chemical potential "
+        f"Occupation of the states of {subject.phrase} near the Fermi level at {listed}, and the chemical potential "
         f"over the Fermi energy against temperature over the Fermi temperature of {number(scale)} kelvin"
         + (f": exact, and by Sommerfeld's series up to {SERIES_HOLDS_TO}." if subject.dimension == 3 else ".")
     )

@@ -108,4 +108,4 @@ def _words(subject: Subject, rows: dict[str, list]) -> str:
         ratios = [one.ratio for one in entries]
         spread = f"{min(ratios):.3g}" if len(ratios) == 1 else f"{min(ratios):.3g} to {max(ratios):.3g}"
         parts.append(f"{name} {spread} ({enumeration(sorted({one.standing for one in entries}))})")
-    return f"Ratio of measured to modelled values for {subject.name}: " + "; ".join(parts) + "."
+    return f"Ratio of measured to modelled values for {subject.phrase}: " + "; ".join(parts) + "."

@@ -88,7 +88,7 @@ def _words(subject: Subject) -> str:
     return (
         "Number of wavevectors up to the Fermi wavevector in a cube, against the Fermi wavevector times the edge: "
         "counted with hard walls and with periodic boundaries, by the continuum, and by Weyl's volume, surface and "
-        f"edge terms. Below, the share of states that hard walls take from a cube of {subject.name} of 1 to 100 "
+        f"edge terms. Below, the share of states that hard walls take from a cube of {subject.phrase} of 1 to 100 "
         "nanometre edge; it stays under one per cent beyond "
         f"{number(subject.si('bulk_edge') / NANOMETRE)} nanometre."
     )

@@ -66,7 +66,7 @@ def occupation(energy: np.ndarray, chemical_potential: float, temperature: float
 def _words(subject: Subject) -> str:
     shape = {3: "rising as the square root of the energy", 2: "the same at every energy"}[subject.dimension]
     return (
-        f"Free-electron density of states of {subject.name}, {shape}; at the Fermi energy of "
+        f"Free-electron density of states of {subject.phrase}, {shape}; at the Fermi energy of "
         f"{energy(subject.si('fermi_energy'))} it is "
         f"{number(subject.si('density_of_states') * UNIT[subject.dimension])} per electronvolt and "
         f"{'cubic' if subject.dimension == 3 else 'square'} nanometre. The filled part is shown at absolute zero "

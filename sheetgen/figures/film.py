@@ -124,7 +124,7 @@ def _fermi_energies(subject: Subject, end: float) -> tuple:
 def _words(subject: Subject) -> str:
     films = [film for film in _films(subject) if film.resistivity is not None]
     text = (
-        f"Resistivity of films of {subject.name} against thickness for rough and half smooth surfaces and for grains "
+        f"Resistivity of films of {subject.phrase} against thickness for rough and half smooth surfaces and for grains "
         "as wide as the film is thick, with "
         f"{number(subject.reference_resistivity.si / MICROOHM_CENTIMETRE)} microohm centimetre in the "
         f"bulk and a mean free path of {number(subject.si('mean_free_path') / NANOMETRE)} nanometre"

@@ -87,7 +87,7 @@ def _over_temperature(subject: Subject) -> tuple:
 
 def _words(subject: Subject) -> str:
     text = (
-        f"Molar heat capacity of {subject.name} from 1 to 1000 kelvin: free electrons, Debye lattice and their sum; "
+        f"Molar heat capacity of {subject.phrase} from 1 to 1000 kelvin: free electrons, Debye lattice and their sum; "
         f"below, C/T against T squared, which starts at the model's heat coefficient of "
         f"{number(subject.si('heat_coefficient') / MILLI)} millijoule per mole and kelvin squared"
     )

@@ -96,8 +96,8 @@ def _threshold(subject: Subject, end: float) -> list[Area]:
 
 def _words(subject: Subject) -> str:
     text = (
-        f"Normal reflectance of {subject.name} and the real and imaginary parts of its permittivity by the Drude model,"
-        f" against photon energy; plasmon energy {number(subject.si('plasma_energy') / c.e)} eV"
+        f"Normal reflectance of {subject.phrase} and the real and imaginary parts of its permittivity by the Drude "
+        f"model, against photon energy; plasmon energy {number(subject.si('plasma_energy') / c.e)} eV"
     )
     if subject.has("plasma_edge_energy"):
         text += f", reflectance edge {number(subject.si('plasma_edge_energy') / c.e)} eV"

@@ -57,7 +57,7 @@ def _note_height(level: float, top: float) -> float:
 
 def _words(subject: Subject) -> str:
     text = (
-        f"Free-electron parabola of {subject.name}, filled up to the Fermi energy of "
+        f"Free-electron parabola of {subject.phrase}, filled up to the Fermi energy of "
         f"{energy(subject.si('fermi_energy'))} at the Fermi wavevector of "
         f"{number(subject.si('fermi_wavevector') * NANOMETRE)} per nanometre."
     )

@@ -89,7 +89,7 @@ def rows(
     ]
     tall = ROW * len(materials) + 4
     panel = Panel(
-        (LABELS, BOTTOM, WIDTH - LABELS - RIGHT, tall),
+        (LABELS, BOTTOM, WIDTH - LABELS - RIGHT - 5, tall),
         axis,
         Axis("", -0.2, len(materials) + 0.2, bare=True),
         tuple(layers),

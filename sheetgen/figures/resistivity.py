@@ -62,7 +62,7 @@ def _words(subject: Subject, residual: float) -> str:
     reference = subject.reference_resistivity
     count = len(subject.measured("resistivity"))
     return (
-        f"Resistivity of {subject.name} from 1 to 1000 kelvin by the Bloch–Grüneisen law through "
+        f"Resistivity of {subject.phrase} from 1 to 1000 kelvin by the Bloch–Grüneisen law through "
         f"{number(reference.si / MICROOHM_CENTIMETRE)} microohm centimetre at "
         f"{kelvin(subject.temperature_of(reference))}"
         + (f", with a residual part of {number(residual)} microohm centimetre" if residual > 0 else "")

@@ -79,4 +79,9 @@ def power_label(number: float) -> str:
 
 def number_label(number: float) -> str:
     """A tick on a linear axis, with a true minus sign."""
-    return f"{number:.6g}".replace("-", "−") if abs(number) > 1e-12 else "0"
+    if abs(number) < 1e-15:
+        return "0"
+    if 1e-3 <= abs(number) < 1e5:
+        return f"{number:.6g}".replace("-", "−")
+    mantissa, _, power = f"{number:.3e}".partition("e")
+    return f"{float(mantissa):g}·10{str(int(power)).translate(_SUPERSCRIPTS)}".replace("-", "−")

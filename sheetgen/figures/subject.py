@@ -6,6 +6,7 @@ from functools import cache, cached_property
 
 import numpy as np
 
+from sheetgen.figures.words import in_sentence
 from sheetgen.quantities.inputs import INPUTS, reference_resistivity, temperature_of
 
 _PICKS = {field.name: field.pick for field in INPUTS if field.scope == "material"}
@@ -24,6 +25,11 @@ class Subject:
         self.dimension = sheet.record.electrons.dimension
         plans = handbook.registry.plans
         self._plans = tuple(plans[scope, self.dimension] for scope in ("material", "specimen"))
+
+    @property
+    def phrase(self) -> str:
+        """The name as it stands within a sentence."""
+        return in_sentence(self.name)
 
     def si(self, id: str, index: int = 0) -> float:
         """A number of the sheet in SI units; NaN where it is absent."""

@@ -39,6 +39,12 @@ def kelvin(temperature: float) -> str:
     return f"{temperature:.1f} K" if temperature < 10 else f"{temperature:.0f} K"
 
 
+def in_sentence(name: str) -> str:
+    """A material's name within a sentence: small where its first word is a word, as it stands where that is not."""
+    first = name.split()[0].split("-")[0] if name.split() else ""
+    return name[:1].lower() + name[1:] if len(first) > 3 and first.isalpha() and first[1:].islower() else name
+
+
 def enumeration(items: list[str]) -> str:
     """Items as a list in a sentence."""
     return items[0] if len(items) == 1 else f"{', '.join(items[:-1])} and {items[-1]}"

@@ -193,7 +193,7 @@ def _words(subject: Subject) -> str:
     filled = subject.sheet.entries("zone_occupation")[0]["value"]
     reaching = "reaches beyond" if ratio > 1 else "stays inside"
     return (
-        f"First Brillouin zone of {subject.name} with the Fermi sphere, seen from outside and in two sections at "
+        f"First Brillouin zone of {subject.phrase} with the Fermi sphere, seen from outside and in two sections at "
         f"right angles; the sphere's radius is {number(ratio)} of the distance of the nearest diffracting face and "
         f"{reaching} it. Filled part of zone 1, 2, and so on: {', '.join(number(part) for part in filled)}."
     )

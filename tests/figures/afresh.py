@@ -11,6 +11,7 @@ from sheetgen.figures import style
 from sheetgen.figures.canvas import SETTINGS, CompactRenderer, figure_of
 from sheetgen.figures.frames import spec_of
 from sheetgen.figures.plot import Area, Curve, Plot, Points, Rule, Shape
+from sheetgen.figures.stamp import stamp
 
 
 def add_layers(plot: Plot):
@@ -29,15 +30,20 @@ def _add(axes, layer) -> None:
     if isinstance(layer, Curve):
         stroke = style.STROKES[layer.look]
         axes.plot(layer.x, layer.y, color=colours[stroke.ink], lw=stroke.width, gid=f"l-{layer.look}")
-    elif isinstance(layer, Area):
-        axes.fill_between(layer.x, layer.lower, layer.upper, color=colours[layer.look], alpha=0.2, lw=0)
-    elif isinstance(layer, Shape):
-        axes.fill(layer.x, layer.y, color=colours[layer.look], alpha=0.2, lw=0)
+    elif isinstance(layer, (Area, Shape)):
+        x, y = (layer.x, layer.y) if isinstance(layer, Shape) else _outline(layer)
+        axes.fill(x, y, color=colours[layer.look], alpha=0.2, lw=0, gid=f"a-{layer.look}")
     elif isinstance(layer, Points):
-        axes.plot(layer.x, layer.y, "o", color=colours[style.MARKERS[layer.look][1]], ms=2 * style.RADIUS)
+        ink = colours[style.MARKERS[layer.look][1]]
+        axes.plot(layer.x, layer.y, "o", color=ink, ms=2 * style.RADIUS, gid=f"m-{layer.look}")
     elif isinstance(layer, Rule):
         draw = axes.axvline if layer.x is not None else axes.axhline
-        draw(layer.x if layer.x is not None else layer.y, color=colours["faint"], lw=0.7)
+        at = layer.x if layer.x is not None else layer.y
+        draw(at, color=colours["faint"], lw=0.7, gid=f"l-{layer.look}")
+
+
+def _outline(area: Area) -> tuple[np.ndarray, np.ndarray]:
+    return np.concatenate((area.x, area.x[::-1])), np.concatenate((area.upper, area.lower[::-1]))
 
 
 def svg(plot: Plot) -> bytes:
@@ -46,6 +52,15 @@ def svg(plot: Plot) -> bytes:
         file = io.BytesIO()
         add_layers(plot).savefig(file, format="svg", metadata={"Date": None})
     return file.getvalue()
+
+
+def same_look(plot: Plot) -> bytes:
+    """The plot drawn whole by matplotlib, in our classes and style sheet, so that only the drawing differs."""
+    with mpl.rc_context(SETTINGS):
+        renderer = CompactRenderer(plot.height)
+        add_layers(plot).draw(renderer)
+    head, _, _ = stamp(plot).svg.partition(b'<path class="gr"')
+    return head + renderer.elements().encode() + b"</svg>"
 
 
 def curve_paths(plot: Plot) -> list[tuple[str, np.ndarray]]:
@@ -57,7 +72,8 @@ def curve_paths(plot: Plot) -> list[tuple[str, np.ndarray]]:
         for axes, panel in zip(figure.axes, plot.panels, strict=True):
             left, bottom, width, tall = panel.box
             for line in axes.lines:
-                if (line.get_gid() or "").startswith("l-"):
+                # Rules have an axis of their own for one coordinate.
+                if line.get_gid().startswith("l-") and line.get_transform() == axes.transData:
                     x, y = line.get_transform().transform(np.column_stack(line.get_data())).T
                     inside = (x >= left) & (x <= left + width) & (y >= bottom) & (y <= bottom + tall)
                     drawn.append((line.get_gid(), np.column_stack((x, plot.height - y))[inside]))

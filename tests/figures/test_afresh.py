@@ -1,13 +1,19 @@
 """Stamped data lie where matplotlib itself would draw them."""
 
+import io
 import re
+from dataclasses import replace
 from importlib import import_module
 from xml.etree import ElementTree
 
 import numpy as np
 import pytest
 from figures import afresh, sample
+from PIL import Image
+from support.browsing import FLAGS
+from support.tools import required_tool
 
+from sheetgen.figures.plot import Note, Points
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.style import UNITS_PER_POINT
 
@@ -60,3 +66,47 @@ def test_every_computed_point_lies_on_the_stamped_curve(module, slug):
     for name, points in placed:
         if len(points):
             assert distances(points, stamped[name]).max() <= NEAR
+
+
+@pytest.fixture(scope="module")
+def raster():
+    """A function that rasterises an SVG at three pixels a point, as an array of grey levels from 0 to 1."""
+    chromium = required_tool("chromium", "chromium-browser", "google-chrome")
+    from playwright.sync_api import sync_playwright
+
+    with sync_playwright() as playwright:
+        browser = playwright.chromium.launch(executable_path=chromium, args=FLAGS)
+        page = browser.new_page(viewport={"width": 723, "height": 900})
+
+        def rasterise(svg: bytes) -> np.ndarray:
+            page.set_content(f'<body style="margin:0">{svg.decode()}')
+            # The dashes of a line shift with its length, which decimation shortens a little: compare whole lines.
+            page.add_style_tag(
+                content="svg{width:723px;height:auto;display:block}path{stroke-dasharray:none!important}"
+            )
+            return np.asarray(Image.open(io.BytesIO(page.screenshot())).convert("L"), dtype=float) / 255
+
+        yield rasterise
+        browser.close()
+
+
+@pytest.mark.parametrize(("module", "slug"), [("heat", "copper"), ("density_of_states", "copper")])
+def test_a_stamped_picture_looks_like_one_drawn_afresh(module, slug, raster):
+    plot = import_module(f"sheetgen.figures.{module}").plot(sample.subject(slug))
+    # Words and error bars are ours in both: what is compared is what matplotlib draws.
+    bare = {"y_uncertainty": None, "x_uncertainty": None}
+    panels = tuple(
+        replace(
+            panel,
+            layers=tuple(
+                replace(layer, **bare) if isinstance(layer, Points) else layer
+                for layer in panel.layers
+                if not isinstance(layer, Note)
+            ),
+        )
+        for panel in plot.panels
+    )
+    plot = replace(plot, panels=panels)
+    stamped, drawn = raster(stamp(plot).svg), raster(afresh.same_look(plot))
+    assert stamped.min() < 0.5  # something is there
+    assert np.abs(stamped - drawn).mean() < 1e-3

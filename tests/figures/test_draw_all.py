@@ -41,4 +41,4 @@ def test_each_figure_names_its_material():
     for sheet in sample.handbook().sheets:
         for figure in draw_all(sheet, sample.handbook()):
             assert figure.title.endswith(f": {sheet.record.name}")
-            assert sheet.record.name in figure.description
+            assert sheet.record.name.lower() in figure.description.lower()

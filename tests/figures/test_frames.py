@@ -2,6 +2,7 @@
 
 import re
 import sys
+from functools import cache
 from subprocess import run
 from xml.etree import ElementTree
 
@@ -9,10 +10,8 @@ import numpy as np
 import pytest
 from figures import sample
 
-from sheetgen.figures import MODULES, draw_all, style
+from sheetgen.figures import MODULES, draw_all, draw_handbook, draw_ranking, style
 from sheetgen.figures.frames import frame, spec_of
-from sheetgen.figures.markup import visible
-from sheetgen.figures.overview import draw_handbook
 from sheetgen.figures.plot import Axis, Curve, Panel, Plot
 from sheetgen.figures.stamp import stamp
 
@@ -54,11 +53,17 @@ def test_pyplot_is_never_loaded():
     assert "matplotlib.pyplot" not in sys.modules
 
 
-def text_boxes(svg):
-    """(text, left, top, right, bottom) of every level text of a picture in points, by matplotlib's wide font."""
+@cache
+def width_of(text):
+    """Width of a text at size 1 in the widest usual font; sub- and superscripts are narrower than that."""
     from matplotlib.font_manager import FontProperties
     from matplotlib.textpath import TextPath
 
+    return TextPath((0, 0), text, size=1, prop=FontProperties("DejaVu Sans")).get_extents().width
+
+
+def text_boxes(svg):
+    """(text, left, top, right, bottom) of every level text of a picture in points, by matplotlib's wide font."""
     sizes = {"la": style.LABEL_SIZE, "no": style.NOTE_SIZE}
     for element in ElementTree.fromstring(svg).iter(SVG + "text"):
         classes = (element.get("class") or "").split()
@@ -68,8 +73,7 @@ def text_boxes(svg):
             x, y = map(int, re.match(r"translate\((\d+),(\d+)\)", element.get("transform")).groups())
         else:
             x, y = int(element.get("x")), int(element.get("y"))
-        # Sub- and superscripts are narrower than the measure takes them for.
-        length = TextPath((0, 0), visible(text), size=size, prop=FontProperties("DejaVu Sans")).get_extents().width
+        length = width_of(text) * size
         x, y = x / style.UNITS_PER_POINT, y / style.UNITS_PER_POINT
         if element.get("transform"):
             yield text, x - 0.75 * size, y - length / 2, x, y + length / 2
@@ -79,11 +83,17 @@ def text_boxes(svg):
 
 
 @pytest.fixture(scope="module")
-def pictures():
-    """(name, svg) of all figures of the sample handbook."""
-    handbook = sample.handbook()
-    figures = [(f"{s.record.slug} {f.id}", f.svg) for s in handbook.sheets for f in draw_all(s, handbook)]
-    return figures + [(figure.id, figure.svg) for figure in draw_handbook(handbook)]
+def pictures(handbook):
+    """(name, svg) of all figures of the sample handbook and of the real one."""
+    figures = []
+    for book in (sample.handbook(), handbook):
+        figures += [(f"{s.record.slug} {f.id}", f.svg) for s in book.sheets for f in draw_all(s, book)]
+        figures += [(figure.id, figure.svg) for figure in draw_handbook(book)]
+    return figures + [(id, figure.svg) for id in handbook.registry if (figure := draw_ranking(handbook, id))]
+
+
+def test_every_picture_of_the_handbook_is_light(pictures):
+    assert max((len(svg), name) for name, svg in pictures)[0] <= 15_000
 
 
 def test_no_text_is_cut(pictures):

@@ -4,7 +4,7 @@ import pytest
 from scipy import constants as c
 
 from sheetgen.figures.markup import plain, spans, visible
-from sheetgen.figures.words import energy, enumeration, kelvin, number, unit_label
+from sheetgen.figures.words import energy, enumeration, in_sentence, kelvin, number, unit_label
 from sheetgen.quantities import registry
 
 
@@ -46,6 +46,21 @@ def test_temperatures_energies_and_lists():
     assert (kelvin(4.2), kelvin(293.15)) == ("4.2 K", "293 K")
     assert (energy(7.03 * c.e), energy(0.0107 * c.e)) == ("7.03 eV", "10.7 meV")
     assert (enumeration(["a"]), enumeration(["a", "b", "c"])) == ("a", "a, b and c")
+
+
+@pytest.mark.parametrize(
+    ("name", "phrase"),
+    [
+        ("Copper", "copper"),
+        ("Gallium arsenide, n-type", "gallium arsenide, n-type"),
+        ("Beta-prime brass", "beta-prime brass"),
+        ("GaAs well", "GaAs well"),
+        ("Tin", "Tin"),
+        ("", ""),
+    ],
+)
+def test_names_within_a_sentence(name, phrase):
+    assert in_sentence(name) == phrase
 
 
 @pytest.mark.parametrize(

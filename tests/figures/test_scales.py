@@ -58,6 +58,17 @@ def test_ticks_of_a_log_axis(number, label):
     assert power_label(number) == label
 
 
-@pytest.mark.parametrize(("number", "label"), [(-0.5, "−0.5"), (0.30000000000000004, "0.3"), (1e-17, "0"), (20, "20")])
+@pytest.mark.parametrize(
+    ("number", "label"),
+    [
+        (-0.5, "−0.5"),
+        (0.30000000000000004, "0.3"),
+        (1e-17, "0"),
+        (20, "20"),
+        (2e-10, "2·10⁻¹⁰"),
+        (-3e5, "−3·10⁵"),
+        (30000, "30000"),
+    ],
+)
 def test_ticks_of_a_linear_axis(number, label):
     assert number_label(number) == label
