@@ -10,6 +10,7 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any
 
 from sheetgen.faults import did_you_mean
+from sheetgen.lookup import NotDerivedError, NotFoundError
 from sheetgen.pages.numbers import NARROW, printed, unit_text
 
 if TYPE_CHECKING:
@@ -20,14 +21,6 @@ _AXES = {"temperature": "K", "edge": "nm", "photon_energy": "eV"}
 _COMMAND = re.compile(r"\\([a-zA-Z]+)")
 _UPRIGHT = re.compile(r"\\(?:mathrm|text|operatorname)\s*")
 _NAMED = {"hbar": "ħ", "langle": "⟨", "rangle": "⟩", "square": "□", "Box": "□", "infty": "∞", "cdot": "·", "ldots": "…"}
-
-
-class NotFoundError(Exception):
-    """A material, quantity or temperature that the handbook does not have: one line that says what it has."""
-
-
-class NotDerivedError(Exception):
-    """A quantity for which the record does not suffice: one line that says what is missing."""
 
 
 @dataclass(frozen=True)

@@ -10,6 +10,7 @@ import numpy as np
 from scipy import constants as c
 
 from sheetgen.draws import Interval, draw_intervals
+from sheetgen.lookup import StatedNumber, find_number, stated_numbers
 from sheetgen.quantities import Definition, Registry
 from sheetgen.quantities.batch import input_titles
 from sheetgen.records import Imprint, Record, Specimen, Value
@@ -242,6 +243,7 @@ class Sheet:
     def __init__(self, material: Row, specimens: Sequence[Row], edition: str):
         self.record = material.record
         self._derived, self._row = material.derived, material.row
+        self.registry: Registry = material.derivation.registry
         self.missing = material.missing()
         self.recalled = material.recalled()
         rows = [material, *specimens]
@@ -253,6 +255,31 @@ class Sheet:
         self.crosschecks = crosschecks(
             Subject(self.record, material.imprint, self.confrontations, self.si("nearest_neighbour_distance"))
         )
+
+    def number(
+        self,
+        id: str,
+        *,
+        at: float | None = None,
+        edge: float | None = None,
+        photon_energy: float | None = None,
+        specimen: str | None = None,
+    ) -> StatedNumber:
+        """One number with its uncertainty and standing, in the unit of its quantity.
+
+        `at` is a temperature in K that the handbook tabulates (without it, the reference one), or of a
+        measured resistivity where the quantity is listed by that; it is of no account for a quantity that does not
+        depend on temperature, whose answer has `temperature` None. `edge` (nm) and `photon_energy` (eV) choose from
+        the lists along these; `specimen` is the name of a specimen whose own number is wanted.
+
+        Raises NotFoundError for a word or point that is not there, NotDerivedError where an input is missing.
+        """
+        points = {"temperature": at, "edge": edge, "photon_energy": photon_energy}
+        return find_number(self, id, points, specimen)
+
+    def numbers(self, id: str, *, specimen: str | None = None) -> tuple[StatedNumber, ...]:
+        """Every entry of a quantity, in the order of the sheet; empty where it is absent. Raises NotFoundError."""
+        return stated_numbers(self, id, specimen)
 
     def si(self, id: str, index: int = 0) -> float:
         """One published entry in SI, NaN where it is absent."""
