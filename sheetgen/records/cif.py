@@ -63,10 +63,8 @@ def read_cif(node: Scalar, reader: Reader, folder: Path) -> Crystal | None:
     """The crystal of a CIF, or None with a fault logged."""
     name = node.text.strip()
     if not _NAME.fullmatch(name):
-        reader.fault(
-            node,
-            f"cif: {shown(name)} is no name of a CIF; expected a file beside the record, such as copper.cif.",
-        )
+        expected = "expected a file beside the record, such as copper.cif"
+        reader.fault(node, f"cif: {shown(name)} is no name of a CIF; {expected}.")
         return None
     path = folder / name
     if not path.exists() and not path.is_symlink():
@@ -86,11 +84,10 @@ def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
         return None
     blocks = [block for block in document if block.find_value("_cell_length_a")]
     if len(blocks) != 1:
-        found = "no block" if not blocks else f"{len(blocks)} blocks ({', '.join(block.name for block in blocks[:5])})"
-        reader.fault(
-            Place(str(path)),
-            f"{found} with a cell; expected one. Keep the block of this material alone, with its cell.",
-        )
+        names = ", ".join(block.name for block in blocks[:5])
+        found = f"{len(blocks)} blocks ({shown(names)})" if blocks else "no block"
+        mend = "Keep the block of this material alone, with its cell."
+        reader.fault(Place(str(path)), f"{found} with a cell; expected one. {mend}")
         return None
     try:
         return _Block(blocks[0], path, reader).crystal()
@@ -144,11 +141,12 @@ class _Block:
 
     def _temperature(self) -> float | None:
         """The temperature of the measurement in K; an odd one is as good as none."""
-        for tag in _TEMPERATURES:
-            if written := self._text(tag):
-                kelvins = read_number(written).value
-                return kelvins if 0 < kelvins < 1e4 else None
-        return None
+        written = next((text for tag in _TEMPERATURES if (text := self._text(tag))), "")
+        try:
+            kelvins = read_number(written).value
+        except UnreadableError:
+            return None
+        return kelvins if 0 < kelvins < 1e4 else None
 
     def _symmetry(self) -> tuple[CellShape, str, list[gemmi.Op]]:
         """Cell shape, lattice name and operations: those listed first, else those of the space group."""

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from sheetgen.faults import did_you_mean
+from sheetgen.records.elements import elements
 from sheetgen.records.measures import DENSITIES, ELECTRONS, VALENCE
 from sheetgen.records.model import Electrons, Value
 from sheetgen.records.nodes import Node, Table
@@ -17,7 +18,7 @@ def read_electrons(
     table: Table, composition: Mapping[str, float], reader: Reader
 ) -> tuple[Electrons, dict[str, Value]]:
     """The electrons of a record, and their values by the last part of the input id ("valence.Ti", "density")."""
-    dimension = 2 if text_of(table.node("dimension")) in ("2", "2.0") else 3
+    dimension = int(float(text_of(table.node("dimension")) or 3))
     inputs: dict[str, Value] = {}
     valence, density = table.node("valence"), table.node("density")
     _check_choice(table, dimension, reader)
@@ -72,6 +73,7 @@ def _valence(
         reader.fault(node, f"valence is one number for a compound; {expected}, such as {{Ti: 4, N: -3}}.")
         return None
     else:
+        _refuse_elements(node, reader)
         value = reader.value(node, VALENCE, "valence")
         valence = {element: value for element in composition if value}
         inputs |= _single("valence", value)
@@ -82,6 +84,14 @@ def _valence(
         reader.fault(node, f"valence adds up to {total:g} electrons per formula unit; expected more than 0.")
         return None
     return valence
+
+
+def _refuse_elements(node: Node, reader: Reader) -> None:
+    """A value is one number or one for each element, not both."""
+    for key, entry in node.entries.items() if isinstance(node, Table) else ():
+        if key in elements():
+            beside = f"{shown(key)} stands beside 'value'"
+            reader.fault(entry.key.place, f"{beside}; give either one number or one for each element.")
 
 
 def _by_element(table: Table, composition: Mapping[str, float], reader: Reader) -> dict[str, Value]:

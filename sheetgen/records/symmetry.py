@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable, Sequence
 from typing import TYPE_CHECKING
 
@@ -24,27 +25,25 @@ def find_space_group(text: str, rhombohedral_axes: bool = False) -> gemmi.SpaceG
     import gemmi
 
     symbol = text.strip()
-    number = symbol.removesuffix(".0")
-    if number.isdecimal() and 1 <= int(number[:4]) <= 230:
-        symbol = gemmi.find_spacegroup_by_number(int(number)).hm
-    found = gemmi.find_spacegroup_by_name(symbol, prefer="R" if rhombohedral_axes else "H")
-    if found is None and symbol.isascii():
-        found = gemmi.find_spacegroup_by_ops(gemmi.symops_from_hall(symbol)) if _hall(symbol) else None
-    if found is None:
-        raise UnreadableError(
-            f"{shown(text)} is no space group; expected a symbol such as 'Fm-3m' or a number from 1 to 230"
-        )
-    return found
+    axes = "R" if rhombohedral_axes else "H"
+    if _NUMBER.fullmatch(symbol) and 1 <= float(symbol) <= 230:
+        symbol = gemmi.find_spacegroup_by_number(int(float(symbol))).hm
+    if found := gemmi.find_spacegroup_by_name(symbol, prefer=axes) or _by_hall_symbol(symbol):
+        return found
+    expected = "expected a symbol such as 'Fm-3m' or a number from 1 to 230"
+    raise UnreadableError(f"{shown(text)} is no space group; {expected}")
 
 
-def _hall(symbol: str) -> bool:
+_NUMBER = re.compile(r"[0-9]{1,3}(?:\.0)?")
+
+
+def _by_hall_symbol(symbol: str) -> gemmi.SpaceGroup | None:
     import gemmi
 
     try:
-        gemmi.symops_from_hall(symbol)
+        return gemmi.find_spacegroup_by_ops(gemmi.symops_from_hall(symbol))
     except (RuntimeError, ValueError):
-        return False
-    return True
+        return None
 
 
 def cell_system(group: gemmi.SpaceGroup) -> str:

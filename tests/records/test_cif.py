@@ -5,6 +5,7 @@ from __future__ import annotations
 import io
 
 import ase.io
+import gemmi
 import pytest
 
 RECORD = "name: X\nformula: {formula}\nstructure: {{cif: x.cif}}\nelectrons: {{density: 1e22 cm^-3}}\n"
@@ -91,6 +92,18 @@ def test_partial_occupancy_and_listed_operations(crystal):
     assert [(site.element, site.occupancy) for site in alloy.sites] == [("Cu", 0.6)] * 2 + [("Zn", 0.4)] * 2
 
 
+def test_listed_operations_of_a_whole_group_tie_the_cell(crystal):
+    operations = "\n".join(f"'{operation.triplet()}'" for operation in gemmi.SpaceGroup("P 42/m n m").operations())
+    listed = f"loop_\n_space_group_symop_operation_xyz\n{operations}\n"
+    rutile = crystal(RUTILE.replace("_space_group_name_H-M_alt 'P 42/m n m'\n", listed))
+    assert (rutile.lattice, rutile.b, len(rutile.sites)) == ("tetragonal", None, 6)
+
+
+@pytest.mark.parametrize("temperature", ["?", "room", "-5", "1e9"])
+def test_an_odd_temperature_is_as_good_as_none(crystal, temperature):
+    assert crystal(RUTILE.replace("298(2)", temperature)).a.temperature is None
+
+
 def test_inputs_are_the_free_constants(read_record):
     record = read_record(RECORD.format(formula="TiO2"), files={"x.cif": RUTILE})
     assert list(record.inputs) == ["structure.a", "structure.c", "electrons.density"]
@@ -130,7 +143,7 @@ BROKEN = [
     ),
     (
         RUTILE + RUTILE.replace("data_rutile", "data_other"),
-        "m/x.cif: 2 blocks (rutile, other) with a cell; expected one. Keep the block of this material alone,"
+        "m/x.cif: 2 blocks ('rutile, other') with a cell; expected one. Keep the block of this material alone,"
         " with its cell.",
     ),
     (

@@ -6,6 +6,9 @@ from pathlib import Path
 
 import pytest
 
+from sheetgen.records import imprint as imprints
+from sheetgen.records.spelling import written_key
+
 FULL = """\
 title: A handbook
 group: Some group
@@ -23,10 +26,7 @@ thresholds: {agrees: 0.05, adjust: 3, undecided: 0.2, degenerate_gas: [0.2, 0.4]
 own quantities: quantities.py
 previous edition: editions.json
 """
-KEYS = (
-    "title, group, edition, date, licence, language, contact, base address, previous edition, reference temperature,"
-    " temperatures, paper, units, thresholds, own quantities"
-)
+KEYS = ", ".join(map(written_key, imprints._KEYS))
 
 
 def test_everything_that_an_imprint_can_say(read):
