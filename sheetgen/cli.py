@@ -118,15 +118,22 @@ def commands() -> None:
     default=SITE,
     help="The folder to publish to [default: site].",
 )
+@click.option(
+    "--draws",
+    metavar="N",
+    type=click.IntRange(100, 10_000_000),
+    default=0,
+    help="Check each uncertainty by N draws, and state 95 % coverage intervals.",
+)
 @as_json
 @with_traceback
-def press_command(materials: Path, into: Path, as_json: bool) -> int:
+def press_command(materials: Path, into: Path, draws: int, as_json: bool) -> int:
     """Derive every sheet and publish the site: the whole new one, or at any fault the old one as it stood."""
     from sheetgen.press import FolderRefusedError, press
 
     try:
         with ProgressLine() as progress:
-            pressed = press(_standing(materials), into, progress)
+            pressed = press(_standing(materials), into, progress, draws=draws)
     except FaultsError as error:
         return _at_fault(error.faults, as_json, f"Nothing was published; {into} stands as it stood.")
     except FolderRefusedError as error:
@@ -159,6 +166,11 @@ def press_command(materials: Path, into: Path, as_json: bool) -> int:
 @commands.command("proof", cls=Command, examples=["sheetgen proof materials", "sheetgen proof --site site"])
 @materials
 @click.option(
+    "--strict",
+    is_flag=True,
+    help="Also a fault: a value without a source or from memory, and a record not reviewed or reviewed too long ago.",
+)
+@click.option(
     "--site",
     metavar="SITE",
     type=click.Path(path_type=Path),
@@ -166,7 +178,7 @@ def press_command(materials: Path, into: Path, as_json: bool) -> int:
 )
 @as_json
 @with_traceback
-def proof_command(materials: Path, site: Path | None, as_json: bool) -> int:
+def proof_command(materials: Path, strict: bool, site: Path | None, as_json: bool) -> int:
     """Read and derive everything, list what is at fault and what to know, publish nothing."""
     if site is not None:
         return _proof_of_site(site, as_json)
@@ -176,6 +188,8 @@ def proof_command(materials: Path, site: Path | None, as_json: bool) -> int:
         with ProgressLine() as progress:
             progress("reading records", 0, 0)
             handbook = Handbook.load(_standing(materials))
+            if strict:
+                handbook.require_strict()
     except FaultsError as error:
         return _at_fault(error.faults, as_json)
     if as_json:

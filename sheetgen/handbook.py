@@ -2,17 +2,25 @@
 
 from __future__ import annotations
 
+import datetime
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
+from functools import cached_property
 from pathlib import Path
+from typing import Any
 
-from sheetgen.faults import Fault, FaultLog
+import numpy as np
+
+from sheetgen.faults import Fault, FaultLog, FaultsError, did_you_mean
+from sheetgen.lookup import NotFoundError, column, frame
 from sheetgen.quantities import Registry, registry
 from sheetgen.quantities.batch import Batch, material_batch, specimen_batch
 from sheetgen.records import Folder, Imprint, Record, Source, read_folder
 from sheetgen.sheet import Derivation, Row, Sheet
+from sheetgen.standing.crosschecks import check_names
 from sheetgen.standing.grading import check_thresholds
 from sheetgen.standing.limits import Indicators
+from sheetgen.standing.strict import strict_faults
 from sheetgen.uncertainty import propagate
 
 SEED = 20_260_101
@@ -43,18 +51,78 @@ class Handbook:
         declared = registry_of(folder.imprint)
         log = FaultLog()
         check_thresholds(folder.imprint, declared.assumptions, log)
+        check_names(folder.imprint, log)
         log.raise_if_any()
         sheets = list(derive(folder.records, folder.imprint, declared, draws, seed))
         log.entries += [fault for sheet in sheets for fault in sheet.crosschecks]
         log.raise_if_any()
         return cls(folder, declared, sheets)
 
+    def require_strict(self) -> None:
+        """Raise FaultsError where a value has no source or is from memory, or a record is not freshly reviewed."""
+        today = datetime.date.today()
+        faults = [f for sheet in self.sheets for f in strict_faults(sheet.record, self.imprint, today)]
+        if faults:
+            raise FaultsError(faults)
+
     def __getitem__(self, slug: str) -> Sheet:
-        """The sheet with a slug; raises KeyError where there is none."""
-        for sheet in self.sheets:
-            if sheet.record.slug == slug:
-                return sheet
-        raise KeyError(slug)
+        """The sheet with a slug; raises NotFoundError, a KeyError, where there is none."""
+        try:
+            return self._by_slug[slug]
+        except KeyError:
+            guess = did_you_mean(str(slug), self._by_slug)
+            raise NotFoundError(f"The handbook has no material '{slug}'.{guess}") from None
+
+    def __iter__(self) -> Iterator[Sheet]:
+        return iter(self.sheets)
+
+    def __len__(self) -> int:
+        return len(self.sheets)
+
+    def __contains__(self, slug: object) -> bool:
+        return slug in self._by_slug
+
+    @cached_property
+    def _by_slug(self) -> dict[str, Sheet]:
+        return {sheet.record.slug: sheet for sheet in self.sheets}
+
+    @property
+    def slugs(self) -> tuple[str, ...]:
+        """The slug of each sheet, in the order of `sheets` and of every `array`."""
+        return tuple(self._by_slug)
+
+    def array(
+        self,
+        id: str,
+        what: str = "value",
+        *,
+        at: float | None = None,
+        edge: float | None = None,
+        photon_energy: float | None = None,
+    ) -> np.ndarray:
+        """One number of every material as an array of shape (materials,), in the unit `registry[id].unit`.
+
+        `what` is "value", "standard_uncertainty" or "standing". A material that lacks the number, or states it per
+        area where the others do per volume, has NaN ("" as a standing). The points are those of `Sheet.number`.
+        Raises NotFoundError for a quantity, edge or photon energy that no sheet has.
+        """
+        if id not in self.registry.published():
+            raise NotFoundError(f"The handbook has no quantity '{id}'.{did_you_mean(id, self.registry)}")
+        points = {"temperature": at, "edge": edge, "photon_energy": photon_energy}
+        return column(self.sheets, id, self.registry[id].unit, what, points)
+
+    def table(self, *ids: str) -> Any:
+        """A pandas DataFrame with one line for each number of the given quantities, or of all, specimens included.
+
+        Its columns are material, name, formula, specimen, quantity, value, standard_uncertainty, unit, standing,
+        temperature (K), edge (nm) and photon_energy (eV). Raises ImportError where pandas is not installed, and
+        NotFoundError for an unknown quantity.
+        """
+        known = {**self.registry.published(), **self.registry.published("specimen")}
+        for id in ids:
+            if id not in known:
+                raise NotFoundError(f"The handbook has no quantity '{id}'.{did_you_mean(id, known)}")
+        return frame(self.sheets, ids)
 
 
 def registry_of(imprint: Imprint) -> Registry:

@@ -30,11 +30,16 @@ class Pressed:
 
 
 def press(
-    folder: Path, into: Path, progress: Progress = lambda step, done, total: None, disk: Disk | None = None
+    folder: Path,
+    into: Path,
+    progress: Progress = lambda step, done, total: None,
+    disk: Disk | None = None,
+    draws: int = 0,
 ) -> Pressed:
     """Derive the handbook of the folder and publish it; a site that needs no change is left untouched.
 
     `progress` is called with the name of a step, how much of it is done and how much there is (0: not known).
+    With `draws`, each number also gets a coverage interval from that many.
     Raises FaultsError, FolderRefusedError or MachineError; the site that stood before then still stands.
     """
     from sheetgen.documents import documents
@@ -43,7 +48,7 @@ def press(
 
     inputs = fingerprints(folder)
     progress("reading records", 0, 0)
-    handbook = Handbook.load(folder)
+    handbook = Handbook.load(folder, draws=draws)
     figures = _figures(handbook, progress)
     files = chain(documents(handbook, figures), lay_out(handbook, figures))
     report = publish(

@@ -4,7 +4,7 @@ import numpy as np
 from scipy import constants as c
 
 from sheetgen.physics import crystals
-from sheetgen.quantities.declaration import Declarations
+from sheetgen.quantities.declaration import Comparison, Declarations
 
 declarations = Declarations()
 quantity, step = declarations.quantity, declarations.step
@@ -68,6 +68,13 @@ def atomic_density(atoms_per_cell, cell_volume):
     unit="g/cm^3",
     formula=r"\frac{1}{V_\mathrm{c}} \sum_i m_i",
     source="prohaska2022",
+    comparison=Comparison(
+        measured="mass_density",
+        ratio="density ratio",
+        above="the specimen is denser than its cell: the cell belongs to another temperature or phase, or there is "
+        "more in it than the formula says",
+        below="the specimen is lighter than its cell: pores, vacancies, or a cell of a lower temperature",
+    ),
     **CRYSTAL,
 )
 def mass_density(cell_mass, cell_volume):

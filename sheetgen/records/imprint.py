@@ -31,6 +31,8 @@ _KEYS = (
     "paper",
     "units",
     "thresholds",
+    "remarks_as_faults",
+    "review_interval",
     "own_quantities",
 )
 _LONGEST_TEXT = 300
@@ -39,6 +41,7 @@ _ADDRESS = re.compile(r"https?://[^\s\"<>\\^`{|}]+")
 _CONTACT = re.compile(r"[^\s@\"<>()]+@[^\s@\"<>()]+\.[A-Za-z0-9-]{2,}|https?://[^\s\"<>\\^`{|}]+")
 _MODULE = re.compile(r"[A-Za-z_][A-Za-z0-9_]{0,63}\.py")
 _NUMBER = re.compile(r"[\d.eE+-]{1,20}")
+_MONTHS = re.compile(r"([1-9]\d{0,2}) (month|year)s?")
 _BARE = re.compile(r"\s*[+-]?[\d.]+\s*")
 _IDENTIFIER = re.compile(r"[a-z][a-z0-9_]{0,63}")
 _EARLIER = re.compile(r"(?:[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}/){0,4}[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}\.json")
@@ -75,6 +78,8 @@ def read_imprint(root: Table, path: Path, reader: Reader) -> Imprint:
         own_quantities=_own_quantities(root.node("own_quantities"), path.parent, reader),
         place=root.place,
         previous_edition=_previous_edition(root.node("previous_edition"), path.parent, reader),
+        remarks_as_faults=_remarks_as_faults(root.node("remarks_as_faults"), reader),
+        review_interval=_review_interval(root.node("review_interval"), reader),
     )
 
 
@@ -217,6 +222,27 @@ def _number(node: Node) -> float | None:
         return float(text_of(node)) if _NUMBER.fullmatch(text_of(node)) else None
     except ValueError:
         return None
+
+
+def _remarks_as_faults(node: Node | None, reader: Reader) -> tuple[str, ...]:
+    """Names of the cross-checks whose remarks stop a press here; which there are, the checks themselves know."""
+    if node is None:
+        return ()
+    items = node.items if isinstance(node, Listing) else [node]
+    if not all(isinstance(item, Scalar) for item in items):
+        reader.fault(node, f"remarks as faults: found {found(node)}; expected names of checks, such as [density].")
+        return ()
+    return tuple(item.text.strip() for item in items)
+
+
+def _review_interval(node: Node | None, reader: Reader) -> int | None:
+    """Months after which a review counts as stale; None where the imprint sets no limit."""
+    if node is None:
+        return None
+    if (match := _MONTHS.fullmatch(text_of(node).strip())) is None:
+        reader.fault(node, f"review interval: found {found(node)}; expected a time such as '36 months' or '3 years'.")
+        return None
+    return int(match[1]) * (12 if match[2] == "year" else 1)
 
 
 def _own_quantities(node: Node | None, folder: Path, reader: Reader) -> Path | None:

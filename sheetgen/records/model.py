@@ -154,6 +154,7 @@ class Imprint:
     """Who publishes the handbook and how: handbook.yaml. Temperatures in K, the reference temperature first.
 
     `date` is the day of the edition (ISO 8601) or empty, `previous_edition` the data file of the one before it.
+    `remarks_as_faults` names the cross-checks that stop a press, `review_interval` counts months.
     """
 
     title: str
@@ -172,6 +173,8 @@ class Imprint:
     place: Place
     date: str = ""
     previous_edition: Path | None = None
+    remarks_as_faults: tuple[str, ...] = ()
+    review_interval: int | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from math import hypot
 
-from sheetgen.faults import Fault
+from sheetgen.faults import Fault, FaultLog, did_you_mean
 from sheetgen.quantities.inputs import NEARBY, resistance_key, resistivities, temperature_of
 from sheetgen.records import Imprint, Record, Value
 from sheetgen.standing.confrontation import Confrontation
@@ -47,12 +47,23 @@ class Subject:
 
 def crosschecks(subject: Subject) -> list[Fault]:
     """What does not fit, as remarks; those that the imprint makes faults are faults."""
-    strict = subject.imprint.thresholds.get("crosschecks", ())
+    strict = subject.imprint.remarks_as_faults
     found = []
     for name, check in CHECKS.items():
         severity = "fault" if name in strict else "remark"
         found += [Fault(value.place, f"{name}: {message}", severity) for value, message in check(subject)]
     return found
+
+
+def check_names(imprint: Imprint, log: FaultLog) -> None:
+    """Note a fault for each check that the imprint names and that does not exist."""
+    for name in imprint.remarks_as_faults:
+        if name not in CHECKS:
+            expected = ", ".join(CHECKS)
+            guess = did_you_mean(name, CHECKS)
+            log.fault(
+                imprint.place, f"remarks as faults: no check is named '{name}'; expected one of {expected}.{guess}"
+            )
 
 
 def _density(subject: Subject) -> Iterator[tuple[Value, str]]:

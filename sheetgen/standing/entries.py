@@ -29,7 +29,8 @@ def deciding(
     """Entry → the confrontation that decides its standing.
 
     Of a list, the entry at exactly the measured temperature, else the nearest within 5 K; a photon energy must
-    be the measured one. A single number takes the measurement nearest the reference temperature.
+    be the measured one. A single number takes the measurement nearest the reference temperature, that of a film
+    only within 5 K.
     """
     chosen: dict[int, tuple[float, Confrontation]] = {}
     for confrontation in confrontations:
@@ -52,7 +53,9 @@ def _place(definition, entries, confrontation, derived, row, imprint) -> tuple[i
     axis = axis_of(definition)
     if axis is None:
         at = imprint.reference_temperature if confrontation.temperature is None else confrontation.temperature
-        return 0, abs(at - imprint.reference_temperature)
+        distance = abs(at - imprint.reference_temperature)
+        # A film's line is that at the reference resistivity; one measured in the cold is another number.
+        return None if confrontation.specimen is not None and distance > NEARBY else (0, distance)
     at, reach = confrontation.temperature, NEARBY
     if axis == "photon_energy":
         at, reach = derived.value(axis, row, confrontation.entry), 0.0

@@ -13,6 +13,7 @@ OUTSIDE, UNCHECKED, AGREES, UNDECIDED, ADJUST, FAILS = (
     "outside", "unchecked", "agrees", "undecided", "adjust", "fails",
 )  # fmt: skip
 HOLDS, STRAINED, BROKEN = "holds", "strained", "broken"
+ROUNDING = 1e-12  # so that a ratio printed as 1.10 lies within 0.10 of 1
 COVERAGE = 2  # standard uncertainties within which a ratio may still be 1
 
 
@@ -30,7 +31,7 @@ class Thresholds:
 
     def grade(self, ratio: float, uncertainty: float) -> str:
         """The standing of a ratio whose assumptions hold."""
-        off = abs(ratio - 1)
+        off = abs(ratio - 1) - ROUNDING
         within = off <= COVERAGE * uncertainty
         if off <= self.agrees or (within and uncertainty <= self.undecided):
             return AGREES
