@@ -6,10 +6,12 @@ about single names only. Every distinct text is read once.
 
 from __future__ import annotations
 
+import csv
 import math
 import re
 from dataclasses import dataclass, field
 from functools import cache, lru_cache
+from importlib.resources import files
 from typing import TYPE_CHECKING, NamedTuple
 
 from sheetgen.faults import did_you_mean
@@ -207,19 +209,31 @@ def _is_name(token: str) -> bool:
     return token[0].isalpha() or token[0] == "_"
 
 
-# What a misspelt unit is likely to have been.
-_COMMON = (
-    *("angstrom", "nm", "um", "mm", "cm", "m", "g", "kg", "mol", "s", "fs", "Hz", "GHz", "K", "degC", "rad", "deg"),
-    *("eV", "meV", "J", "mJ", "W", "Pa", "GPa", "bar", "A", "C", "V", "uV", "S", "ohm", "uohm", "T", "mT", "percent"),
-)
+def _named(name: str, written: str) -> Unit:
+    """One unit name with its prefix: a usual one from the table, any other by the units library."""
+    unit = _usual_units().get(name) or _library_unit(name)
+    if unit is None:
+        within = "" if name == written else f" in {shown(written)}"
+        raise UnreadableError(f"{shown(name)}{within} is no unit known here.{did_you_mean(name, _usual_units())}")
+    return unit
+
+
+@cache
+def _usual_units() -> dict[str, Unit]:
+    """What the units library says of the usual names, kept beside: loading it takes longer than reading a handbook."""
+    table = files(__package__).joinpath("data/units.csv").read_text(encoding="utf-8")
+    units = {}
+    for row in csv.DictReader(table.splitlines()):
+        name, factor, offset = (row.pop(column) for column in ("unit", "factor", "offset"))
+        units[name] = _unit(float(factor), float(offset), {base: int(power) for base, power in row.items()})
+    return units
 
 
 @lru_cache(maxsize=4096)
-def _named(name: str, written: str) -> Unit:
-    """One unit name with its prefix, by the units library."""
+def _library_unit(name: str) -> Unit | None:
+    """What the units library makes of a name; None for an unknown one, and for levels such as dB."""
     import pint
 
-    within = "" if name == written else f" in {shown(written)}"
     registry = _registry()
     try:
         one, zero = (registry.Quantity(number, name).to_base_units() for number in (1.0, 0.0))
@@ -230,8 +244,7 @@ def _named(name: str, written: str) -> Unit:
             return _unit(degree.magnitude, zero.magnitude, {"kelvin": 1})
     except (pint.PintError, ValueError, AttributeError):
         pass
-    # A logarithmic unit such as dB is none for us: no value of a record is a level.
-    raise UnreadableError(f"{shown(name)}{within} is no unit known here.{did_you_mean(name, _COMMON)}")
+    return None
 
 
 def _unit(factor: float, offset: float, powers: dict[str, float]) -> Unit:

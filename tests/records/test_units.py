@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import subprocess
+import sys
 import time
 
 import pytest
@@ -9,7 +11,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from sheetgen.records import dimension_matches, si_factor, to_si
-from sheetgen.records.units import read_unit
+from sheetgen.records.units import _library_unit, _usual_units, read_unit
 from sheetgen.records.unreadable import UnreadableError
 
 
@@ -64,6 +66,25 @@ def test_unit_is_what_the_library_makes_of_its_plain_form(written, plain):
     assert unit.factor == pytest.approx(expected.magnitude, rel=1e-12)
     powers = {base: power for base, power in expected.unit_items() if base != "radian"}
     assert dict(unit.dimension) == pytest.approx(powers)
+
+
+def test_table_of_usual_units_is_what_the_library_says():
+    assert len(_usual_units()) > 100
+    for name, unit in _usual_units().items():
+        library = _library_unit(name)
+        assert unit[2:] == library[2:], name
+        assert unit[:2] == pytest.approx(library[:2], rel=4e-16), name
+
+
+def test_usual_units_do_not_load_the_library():
+    program = (
+        "import sys\n"
+        "from sheetgen.records.units import _library_unit, _usual_units, read_unit\n"
+        "for unit in ('µΩ cm', 'mJ/(mol K²)', '1/(eV nm^3)', 'Ω/sq', '°C', 'g/cm³'):\n"
+        "    read_unit(unit)\n"
+        "print('pint' in sys.modules)\n"
+    )
+    assert subprocess.run([sys.executable, "-c", program], capture_output=True, text=True).stdout == "False\n"
 
 
 @pytest.mark.parametrize("unit", ["Ω", "Ω/sq", "Ω/□", "ohm/square", "ohm per square", "Ω per sq"])
