@@ -158,6 +158,9 @@ def _handle(key: Key):
     return Line2D([], [], label=key.name)
 
 
+_ANCHORS = {"left": "", "center": "mi", "right": "en"}
+
+
 class CompactRenderer(RendererBase):
     """Writes what matplotlib draws as SVG paths gathered by class, and text as text.
 
@@ -215,15 +218,12 @@ class CompactRenderer(RendererBase):
 
     def draw_text(self, gc, x, y, s, prop, angle, ismath=False, mtext=None) -> None:
         """A label, anchored as the artist is, so that another font moves nothing out of place."""
-        size = prop.get_size_in_points()
-        kind = "la" if size == style.LABEL_SIZE else "no" if size == style.NOTE_SIZE else ""
-        anchor = mtext.get_horizontalalignment() if mtext else "left"
-        if mtext is not None:
-            anchor_x, anchor_y = mtext.get_transform().transform(mtext.get_unitless_position())
-            x, y = (anchor_x, y) if not angle else (x, self.height - anchor_y)
-            if angle:
-                anchor = {"center": "center"}.get(mtext.get_verticalalignment(), "center")
-        classes = " ".join(filter(None, (kind, {"center": "mi", "right": "en"}.get(anchor, ""))))
+        kind = {style.LABEL_SIZE: "la", style.NOTE_SIZE: "no"}.get(prop.get_size_in_points(), "")
+        anchor = "mi" if angle else _ANCHORS[mtext.get_horizontalalignment()]
+        along, across = mtext.get_transform().transform(mtext.get_unitless_position())
+        # The baseline is where matplotlib puts it; along it, the artist's own point is the anchor.
+        x, y = (x, self.height - across) if angle else (along, y)
+        classes = " ".join(filter(None, (kind, anchor)))
         self._texts.append(text_element(x, y, s, classes, angle))
 
     def get_text_width_height_descent(self, s, prop, ismath):

@@ -31,7 +31,7 @@ def plot(subject: Subject) -> Plot:
     layers = [
         _parabola(subject, "all states", reach, joules, "thin"),
         Rule("Fermi level", y=level, look="level"),
-        _parabola(subject, "filled states", filled_to, joules, "one"),
+        _parabola(subject, "filled", filled_to, joules, "one"),
     ]
     if shows_face:
         layers += [Rule("zone face", x=sign * face) for sign in (-1, 1)]

@@ -71,14 +71,16 @@ def rows(
 ) -> Plot:
     """A row a material, in the order in which the materials first appear among the entries.
 
-    What is negative stands at its size; its name in the CSV says so, and with `signed` a note in its row.
+    What is negative stands at its size: its name in the CSV says so where others are positive, and with `signed` a
+    note in its row.
     """
     materials = list(dict.fromkeys(entry.slug for entry in entries))
     names = {entry.slug: entry.name for entry in entries}
+    mixed = len({entry.value > 0 for entry in entries}) == 2
     levels = {slug: len(materials) - 0.5 - place for place, slug in enumerate(materials)}
     layers: list[Layer] = list(behind)
     for look in dict.fromkeys(entry.look for entry in entries):
-        layers.append(_markers([entry for entry in entries if entry.look == look], levels, look))
+        layers.append(_markers([entry for entry in entries if entry.look == look], levels, look, mixed))
     layers += [
         Note(_short(names[slug]), axis.low, level, "end", dx=-4, dy=-2.3, link=f"{root}materials/{slug}.html")
         for slug, level in levels.items()
@@ -100,14 +102,14 @@ def rows(
     return Plot(id, "handbook", title, description, (panel,), height)
 
 
-def _markers(entries: list[Entry], levels: dict[str, float], look: str) -> Points:
+def _markers(entries: list[Entry], levels: dict[str, float], look: str, mixed: bool) -> Points:
     return Points(
         "",
         np.array([abs(entry.value) for entry in entries]),
         np.array([levels[entry.slug] for entry in entries]),
         look,
         x_uncertainty=np.array([entry.uncertainty or 0.0 for entry in entries]),
-        names=tuple(entry.name if entry.value >= 0 else f"{entry.name} (negative)" for entry in entries),
+        names=tuple(f"{entry.name} (negative)" if mixed and entry.value < 0 else entry.name for entry in entries),
     )
 
 
@@ -150,6 +152,4 @@ def _at(entry: dict) -> float:
 
 def _condition(definition, at: float) -> str:
     """What a listed quantity was taken at; resistivities are each at a temperature of their own near the reference."""
-    if definition.listed_by in _AXES:
-        return f" at {number(at)} {_AXES[definition.listed_by]}"
-    return ""
+    return f" at {at:g} {_AXES[definition.listed_by]}" if definition.listed_by in _AXES else ""

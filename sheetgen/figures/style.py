@@ -16,8 +16,8 @@ HEIGHT = 168.0
 UNITS_PER_POINT = 100
 LABEL_SIZE = 7.6
 TICK_SIZE = 7.0
-NOTE_SIZE = 6.6
-SMALLEST_SIZE = 6.2
+NOTE_SIZE = 6.8
+INDEX_SIZE = 6.0  # sub- and superscripts: nothing on paper is smaller
 
 FACE = "var(--figure-face, sans-serif)"
 
@@ -81,7 +81,6 @@ MARKERS = {
     "cross": ("cross", "two", False),
     "ring": ("circle", "two", False),
     "opentriangle": ("triangle", "faint", False),
-    "opensquare": ("square", "two", False),
 }
 RADIUS = 1.9
 
@@ -95,9 +94,9 @@ def _rules() -> list[str]:
         ".mi{text-anchor:middle}",
         ".en{text-anchor:end}",
         # A ground-coloured rim keeps a note readable where it crosses a line.
-        ".no,.ha{paint-order:stroke;stroke:var(--ground);stroke-width:220;stroke-linejoin:round}",
+        ".no{paint-order:stroke;stroke:var(--ground);stroke-width:220;stroke-linejoin:round}",
         ".i{font-style:italic}",
-        ".s{font-size:72%}",
+        f".s{{font-size:{INDEX_SIZE * unit:g}px}}",
         ".gr{fill:var(--ground)}",
         "path{fill:none;stroke-linejoin:round;stroke-linecap:butt}",
     ]

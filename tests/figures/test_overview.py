@@ -85,8 +85,8 @@ def test_a_ranking_runs_from_the_largest_to_the_smallest_with_uncertainties():
 
 
 def test_a_ranking_says_at_which_temperature_or_edge():
-    assert ranking.draw(sample.handbook(), "thermopower").title.endswith("at 293 K")
-    assert ranking.draw(sample.handbook(), "level_spacing").title.endswith("at 1.00 nm")
+    assert ranking.draw(sample.handbook(), "thermopower").title.endswith("at 293.15 K")
+    assert ranking.draw(sample.handbook(), "level_spacing").title.endswith("at 1 nm")
 
 
 def test_every_published_quantity_can_be_ranked_or_is_left_out():
