@@ -32,15 +32,23 @@ def citation(key: str, sources: dict[str, Any]) -> Citation:
     if source is None:
         return Citation(key, key, False)
     names = [_family(author) for author in source.authors]
+    if names[-1:] == ["others"]:  # BibTeX's word for further authors
+        names = [names[0], "", ""]
     who = {0: _short_title(source.title) or key, 1: names[0] if names else ""}.get(len(names))
     if who is None:
         who = " & ".join(names) if len(names) == 2 else f"{names[0]} et al."
     return Citation(key, f"{who} {source.year}".strip(), True)
 
 
+def order(source: Any) -> tuple[str, ...]:
+    """By what a list of sources is sorted: family names, or the title where there are none, then the year."""
+    names = [_family(author).casefold() for author in source.authors]
+    return (" ".join(names) or source.title.casefold(), source.year, source.key)
+
+
 def _short_title(title: str) -> str:
     """A title without its subtitle, its first words where it is still long."""
-    return textwrap.shorten(re.split(r": | \(", title)[0], 36, placeholder="…")
+    return textwrap.shorten(re.split(r": | \(", title)[0], 40, placeholder="…")
 
 
 def _family(author: str) -> str:

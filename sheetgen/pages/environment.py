@@ -50,6 +50,7 @@ class Press:
             date=words.date,
             lower_first=words.lower_first,
             sentence=words.sentence,
+            symbols=words.symbols,
         )
         self.environment.globals.update(words=words)
 

@@ -19,8 +19,13 @@ _ATTRIBUTES = frozenset(
     """mathvariant stretchy fence form accent accentunder linethickness displaystyle scriptlevel width columnalign
     separator minsize maxsize lspace rspace movablelimits largeop symmetric""".split()  # noqa: SIM905
 )
-# The converter's sign for a square is in few founts; the plain white square is in ours.
-_REPLACED = str.maketrans({"\u25fb": "\u25a1"})
+# The converter's sign for a square is in few founts, the plain white square is in ours; as a superscript the asterisk
+# operator is set at the height of a sign, the common asterisk far above.
+_REPLACED = str.maketrans({"\u25fb": "\u25a1", "*": "\u2217"})
+# Letters that lean over the subscript that follows them.
+_LEANING = frozenset("vy")
+# A solidus is set solid, as print does (1/3, not 1 / 3); the name of a function stands off from its argument.
+_SPACED = {"/": "0.06em"} | dict.fromkeys(("cos", "sin", "tan", "ln", "log", "exp", "min", "max"), "0.12em")
 _NOT_SPOKEN = frozenset(["\u2061", "\u2062", "\u2063"])
 _SPOKEN_POWERS = {"2": "squared", "3": "cubed"}
 
@@ -38,22 +43,24 @@ def formula(latex: str, display: bool = False) -> Markup:
     """
     if not latex:
         return Markup("")
-    root = _converted(latex)
+    root = _converted(latex, "block" if display else "inline")
     _unwrap(root)
     for element in root.iter():
         _tidy(element, latex)
+    for element in list(root.iter("msub")):
+        _make_room(element)
     root.attrib.clear()
     root.set("alttext", spoken(root))
     if display:
-        root.set("display", "block")
+        root.set("displaystyle", "true")
     return Markup(ElementTree.tostring(root, encoding="unicode"))
 
 
-def _converted(latex: str) -> ElementTree.Element:
+def _converted(latex: str, display: str) -> ElementTree.Element:
     from latex2mathml.converter import convert
 
     try:
-        return ElementTree.fromstring(convert(_UPRIGHT.sub(r"\\text{\1}", latex)))
+        return ElementTree.fromstring(convert(_UPRIGHT.sub(r"\\text{\1}", latex), display=display))
     except Exception as error:  # the converter's own errors have no common class below Exception
         raise FormulaError(f"the formula {latex!r} cannot be set ({type(error).__name__})") from error
 
@@ -68,6 +75,15 @@ def _unwrap(element: ElementTree.Element) -> None:
         element[:] = list(element[0])
 
 
+def _make_room(element: ElementTree.Element) -> None:
+    """Keep a subscript clear of a letter that leans over it."""
+    base = element[0]
+    if base.tag == "mi" and base.text in _LEANING:
+        row = ElementTree.Element("mrow")
+        row.extend([base, ElementTree.Element("mspace", {"width": "0.08em"})])
+        element[0] = row
+
+
 def _tidy(element: ElementTree.Element, latex: str) -> None:
     """Drop the namespace prefix and every attribute but the few that matter; refuse what is not MathML."""
     element.tag = element.tag.removeprefix(f"{{{NAMESPACE}}}")
@@ -76,8 +92,9 @@ def _tidy(element: ElementTree.Element, latex: str) -> None:
     element.attrib = {key: value for key, value in element.attrib.items() if key in _ATTRIBUTES}
     if element.text:
         element.text = element.text.translate(_REPLACED)
-        if element.text == "/":  # set solid, as print does: 1/3, not 1 / 3
-            element.attrib |= {"lspace": "0.06em", "rspace": "0.06em"}
+        if element.text in _SPACED:
+            element.tag = "mo"
+            element.attrib |= dict.fromkeys(("lspace", "rspace"), _SPACED[element.text])
         if "\\" in element.text:
             raise FormulaError(f"the formula {latex!r} uses {element.text}, which is not a known command")
 

@@ -84,7 +84,7 @@ def sources(handbook: Any) -> dict[str, Any]:
         }
         for key, source in citations.all_sources(handbook).items()
     ]
-    return {"sources": sorted(listed, key=lambda item: (item["source"].text.casefold(), item["source"].key))}
+    return {"sources": sorted(listed, key=lambda item: citations.order(item["source"]))}
 
 
 def _methods_by_source(handbook: Any) -> dict[str, list[Any]]:

@@ -121,6 +121,14 @@ def lower_first(title: str) -> str:
     return title if title.startswith(_NAMES) or title[1:2].isupper() else title[:1].lower() + title[1:]
 
 
+_SYMBOL = re.compile(r"(?<!\w)([^\W\d_])_([A-Z]|[a-z0-9]+)")
+
+
+def symbols(text: str) -> Markup:
+    """A text in which symbols such as k_F are set as symbols."""
+    return Markup(_SYMBOL.sub(r"<i>\1</i><sub>\2</sub>", str(Markup.escape(text))))
+
+
 def sentence(text: str) -> str:
     """A phrase as a sentence of its own: capital and full stop."""
     return text[:1].upper() + text[1:] + ("" if text.endswith((".", "!", "?")) else ".")
