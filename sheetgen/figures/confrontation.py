@@ -8,6 +8,7 @@ import numpy as np
 
 from sheetgen.figures.layout import BOTTOM, LEGEND_ROW, RIGHT, TOP
 from sheetgen.figures.plot import Area, Axis, Figure, Key, Note, Panel, Plot, Points, Rule
+from sheetgen.figures.scales import decades
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.style import WIDTH
 from sheetgen.figures.subject import Subject
@@ -23,7 +24,7 @@ LOOKS = {
     "fails": "cross",
     "outside": "opentriangle",
 }
-RANGES = ((0.1, 10.0), (0.01, 100.0), (1e-3, 1e3), (1e-5, 1e5))
+RANGES = ((0.1, 10.0), (0.01, 100.0), (1e-3, 1e3))
 
 
 def draw(subject: Subject) -> Figure | None:
@@ -35,7 +36,8 @@ def plot(subject: Subject) -> Plot:
     """One row a quantity, one marker a measurement; a ratio of opposite sign stands at its size and says so."""
     rows = _rows(subject)
     ratios = np.array([abs(one.ratio) for entries in rows.values() for one in entries])
-    low, high = next((pair for pair in RANGES if pair[0] < ratios.min() and ratios.max() < pair[1]), RANGES[-1])
+    fitting = (pair for pair in RANGES if pair[0] < ratios.min() and ratios.max() < pair[1])
+    low, high = next(fitting, None) or decades([*ratios, 1.0])
     count = len(rows)
     height = BOTTOM + TOP + 2 * LEGEND_ROW + ROW * count + 4
     box = (LABELS, BOTTOM, WIDTH - LABELS - RIGHT, ROW * count + 4)

@@ -59,7 +59,9 @@ def density_of_states(subject: Subject, end: float) -> tuple[np.ndarray, np.ndar
 
 
 def occupation(energy: np.ndarray, chemical_potential: float, temperature: float) -> np.ndarray:
-    """The filled share of the states at an energy (J) by Fermi and Dirac."""
+    """The filled share of the states at an energy (J) by Fermi and Dirac; at T = 0 a step."""
+    if temperature == 0:
+        return np.heaviside(chemical_potential - energy, 0.5)
     return expit((chemical_potential - energy) / (c.k * temperature))
 
 

@@ -61,6 +61,8 @@ def _words(subject: Subject) -> str:
         f"{energy(subject.si('fermi_energy'))} at the Fermi wavevector of "
         f"{number(subject.si('fermi_wavevector') * NANOMETRE)} per nanometre."
     )
+    if subject.record.electrons.charge == "hole":
+        text += " The carriers are holes: energies count downwards from the top of their band."
     if not subject.has("fermi_to_zone_ratio"):
         return text
     ratio = subject.si("fermi_to_zone_ratio")

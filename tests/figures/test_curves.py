@@ -62,6 +62,11 @@ def test_the_warm_electrons_are_as_many_as_the_cold_ones(slug, temperature):
     assert held == pytest.approx(subject.si(subject.density_name), rel=2e-3)
 
 
+def test_at_absolute_zero_the_edge_is_a_step():
+    filled = density_of_states.occupation(np.array([0.5, 1.0, 1.5]), 1.0, 0.0)
+    assert filled.tolist() == [1.0, 0.5, 0.0]
+
+
 def test_the_resistivity_law():
     law = layers_of(resistivity, COPPER, Curve)["Bloch–Grüneisen"]
     expected = bloch_grueneisen.resistivity_from_debye(law.x, 343.0, 2e-11, 1.678e-8, 293.0)

@@ -42,3 +42,8 @@ def test_each_figure_names_its_material():
         for figure in draw_all(sheet, sample.handbook()):
             assert figure.title.endswith(f": {sheet.record.name}")
             assert sheet.record.name.lower() in figure.description.lower()
+
+
+def test_holes_say_that_they_are_holes():
+    figure = draw_all(sample.sheet("germanium-p"), sample.handbook())[0]
+    assert "The carriers are holes" in figure.description

@@ -3,7 +3,7 @@
 import pytest
 from scipy import constants as c
 
-from sheetgen.figures.markup import plain, spans, visible
+from sheetgen.figures.markup import from_latex, plain, spans, visible
 from sheetgen.figures.words import energy, enumeration, in_sentence, kelvin, number, unit_label
 from sheetgen.quantities import registry
 
@@ -17,6 +17,22 @@ def test_a_label_in_a_picture_has_italics_and_a_subscript_that_shifts_back():
     assert spans("*E*_{F} / eV", 1000) == (
         '<tspan class="i">E</tspan><tspan class="s" dy="220">F</tspan><tspan dy="-220"> / eV</tspan>'
     )
+
+
+@pytest.mark.parametrize(
+    ("latex", "label"),
+    [
+        (r"E_\mathrm{F}", "*E*_{F}"),
+        (r"\hbar\omega_\mathrm{sp}", "*ħ**ω*_{sp}"),
+        (r"k_\mathrm{F}/k_\mathrm{zone}", "*k*_{F}/*k*_{zone}"),
+        (r"\langle E \rangle", "⟨*E*⟩"),
+        (r"r_\mathrm{s}^*", "*r*_{s}^{*}"),
+        (r"L_{1\,\%}", "*L*_{1\u202f%}"),
+        (r"\frac{a}{b}", None),
+    ],
+)
+def test_symbols_of_declarations(latex, label):
+    assert from_latex(latex) == label
 
 
 def test_markup_characters_of_xml_are_escaped():
