@@ -239,6 +239,46 @@ def quote_command(material: str, quantity: str, at: float | None, materials: Pat
     return DONE
 
 
+@commands.command(
+    "errata",
+    cls=Command,
+    examples=["sheetgen errata HEAD~1 materials", "sheetgen errata old/handbook.json site --json"],
+)
+@click.argument("old", cls=Argument, said="an edition: a handbook.json, a site, a folder of records, a git revision")
+@click.argument("new", cls=Argument, said="the later edition, in any of these forms")
+@click.option(
+    "--materials",
+    metavar="FOLDER",
+    type=click.Path(path_type=Path),
+    default=MATERIALS,
+    help="The folder of records that a git revision is looked for in [default: materials].",
+)
+@as_json
+@with_traceback
+def errata_command(old: str, new: str, materials: Path, as_json: bool) -> int:
+    """Tell which numbers moved between two editions, by how much, and because of which input."""
+    from sheetgen.errata import EditionError, errata, open_edition
+    from sheetgen.errata_lines import lines
+
+    try:
+        with ProgressLine() as progress:
+            progress(f"reading {old}", 0, 0)
+            earlier = open_edition(old, materials)
+            progress(f"reading {new}", 0, 0)
+            later = open_edition(new, materials)
+            progress("deriving what each change does", 0, 0)
+            found = errata(earlier, later)
+    except FaultsError as error:
+        return _at_fault(error.faults, as_json)
+    except EditionError as error:
+        raise WrongWordError(str(error)) from error
+    if as_json:
+        _print_json(found.as_json())
+    else:
+        _list(lines(found), err=False)
+    return DONE
+
+
 def _proof_of_site(site: Path, as_json: bool) -> int:
     from sheetgen.press import FolderRefusedError, deviations
 

@@ -8,7 +8,10 @@ import json
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
+from sheetgen import __version__
 from sheetgen.handbook import Handbook
+from sheetgen.quantities.fingerprints import fingerprint
+from sheetgen.records.assembly import assembly
 from sheetgen.records.schema import record_schema
 from sheetgen.sheet import CONSTANTS, Sheet
 
@@ -27,7 +30,7 @@ def documents(handbook: Handbook, figures: Mapping[str, Sequence[Any]]) -> Itera
         for figure in drawn:
             yield f"figures/{slug}/{figure.id}.svg", figure.svg
             yield f"figures/{slug}/{figure.id}.csv", figure.csv
-    yield "data/handbook.json", as_json(_handbook(handbook, whole))
+    yield "data/handbook.json", as_json(handbook_data(handbook, whole))
     columns = table_columns(handbook.sheets, handbook)
     yield "data/handbook.csv", as_csv(handbook.sheets, columns)
     yield "data/handbook.csv-metadata.json", as_json(_csv_description(handbook, columns))
@@ -106,22 +109,35 @@ def _figure(slug: str, id: str) -> dict:
     return {"id": id, "svg": f"figures/{slug}/{id}.svg", "csv": f"figures/{slug}/{id}.csv"}
 
 
-def _handbook(handbook: Handbook, materials: list[dict]) -> dict:
+def handbook_data(handbook: Handbook, materials: list[dict]) -> dict:
+    """The content of handbook.json, around the data of its materials.
+
+    `conditions`, `assemblies` and the fingerprints are what the next edition needs to say what changed since.
+    """
     imprint = handbook.imprint
     return {
         "title": imprint.title,
         "group": imprint.group,
         "edition": imprint.edition,
+        **({"date": imprint.date} if imprint.date else {}),
         "licence": imprint.licence,
         "constants": CONSTANTS,
+        "version": __version__,
+        "conditions": {
+            "reference_temperature": imprint.reference_temperature,
+            "temperatures": list(imprint.temperatures),
+            "thresholds": imprint.thresholds,
+        },
         "quantities": {
             id: {
                 "title": handbook.registry[id].title,
                 "units": list(dict.fromkeys(d.unit for d in handbook.registry.definitions_of(id))),
                 "section": handbook.registry[id].section,
+                "fingerprint": fingerprint(handbook.registry.definitions_of(id)),
             }
             for id in (*handbook.registry.published(), *handbook.registry.published("specimen"))
         },
+        "assemblies": {sheet.record.slug: assembly(sheet.record) for sheet in handbook.sheets},
         "materials": materials,
     }
 

@@ -23,9 +23,11 @@ LAYERS = [
     {"sheet"},
     {"handbook"},
     {"documents"},
+    {"errata"},
     {"figures"},
     {"pages"},
-    {"press", "quote", "terminal", "drafting"},
+    {"press", "quote", "terminal", "drafting", "errata_lines", "sarif"},
+    {"galley"},
     {"cli"},
     {"__main__"},
 ]

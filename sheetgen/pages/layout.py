@@ -8,7 +8,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from functools import cache
 from typing import Any
 
-from . import citations, front, quantity, reference, words
+from . import changes, citations, front, quantity, reference, words
 from .environment import Press, template_folder
 from .sheet import SheetPage
 
@@ -36,6 +36,9 @@ def lay_out(handbook: Any, figures: Mapping[str, Sequence[Any]]) -> Iterator[tup
     yield "methods.html", layout.page("methods.html", "", **reference.methods(handbook))
     yield "limits.html", layout.page("limits.html", "", **reference.limits(handbook))
     yield "sources.html", layout.page("sources.html", "", **reference.sources(handbook))
+    since = changes.Changes(handbook)
+    yield changes.PAGE, layout.page("changes.html", "", **since.context())
+    yield from since.feed()
 
 
 @cache

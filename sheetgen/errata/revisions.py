@@ -1,0 +1,80 @@
+"""Records as they stood at a git revision, without touching the work tree."""
+
+from __future__ import annotations
+
+import io
+import subprocess
+import tarfile
+import tempfile
+from collections.abc import Iterator
+from contextlib import contextmanager
+from pathlib import Path
+
+from sheetgen.faults import MachineError
+
+PATIENCE = 60  # seconds for one call of git
+
+
+class EditionError(Exception):
+    """The word names no edition: one line that says what was looked for."""
+
+
+@contextmanager
+def records_at(revision: str, folder: Path) -> Iterator[Path]:
+    """A temporary copy of the folder of records as it stood at a revision; it has the folder's own name.
+
+    Raises EditionError for what is no revision of it, MachineError where git is missing or fails.
+    """
+    if not folder.is_dir():
+        raise EditionError(f"'{revision}' is no file and no folder, and there is no folder {folder} to look for it in.")
+    top, tree = _tree(revision, folder)
+    archive = _git(top, "archive", "--format=tar", tree, reason=f"cannot read the records at '{revision}'")
+    with tempfile.TemporaryDirectory(prefix="sheetgen-") as temporary:
+        copy = Path(temporary) / folder.resolve().name
+        copy.mkdir()
+        try:
+            with tarfile.open(fileobj=io.BytesIO(archive)) as files:
+                files.extractall(copy, filter="data")
+        except tarfile.FilterError as error:
+            raise EditionError(f"'{revision}' holds a link that leads out of the folder of records: {error}") from error
+        yield copy
+
+
+def _tree(revision: str, folder: Path) -> tuple[Path, str]:
+    """The top of the repository, and the name of the folder's tree at the revision."""
+    try:
+        top = Path(_git(folder, "rev-parse", "--show-toplevel").decode().rstrip("\n"))
+    except _GitError:
+        message = f"'{revision}' is no file and no folder, and {folder} lies in no git repository to look for it in."
+        raise EditionError(message) from None
+    try:
+        commit = _git(folder, "rev-parse", "--verify", "--quiet", "--end-of-options", f"{revision}^{{commit}}")
+    except _GitError:
+        message = f"'{revision}' is no file, no folder and no revision of {folder}; `git log` names the revisions."
+        raise EditionError(message) from None
+    inside = folder.resolve().relative_to(top.resolve()).as_posix()
+    name = f"{commit.decode().strip()}:{'' if inside == '.' else inside}"
+    try:
+        return top, _git(top, "rev-parse", "--verify", "--quiet", "--end-of-options", name).decode().strip()
+    except _GitError:
+        raise EditionError(f"There was no folder {folder} at '{revision}'.") from None
+
+
+class _GitError(Exception):
+    """git ended with an error; its own words."""
+
+
+def _git(folder: Path, *words: str, reason: str = "") -> bytes:
+    """What one call of git prints. Raises _GitError, or with a `reason` MachineError, where git refuses."""
+    try:
+        run = subprocess.run(["git", "-C", str(folder), *words], capture_output=True, timeout=PATIENCE, check=False)
+    except FileNotFoundError:
+        raise MachineError("git is not installed, and only git can show an earlier revision; install it") from None
+    except subprocess.TimeoutExpired:
+        raise MachineError(f"git did not answer within {PATIENCE} seconds") from None
+    if run.returncode == 0:
+        return run.stdout
+    said = run.stderr.decode(errors="replace").strip().splitlines()
+    if reason:
+        raise MachineError(f"{reason}: {said[-1] if said else 'git failed'}")
+    raise _GitError(said[-1] if said else "")
