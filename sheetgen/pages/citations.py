@@ -31,13 +31,21 @@ def citation(key: str, sources: dict[str, Any]) -> Citation:
     source = sources.get(key)
     if source is None:
         return Citation(key, key, False)
-    names = [_family(author) for author in source.authors]
-    if names[-1:] == ["others"]:  # BibTeX's word for further authors
-        names = [names[0], "", ""]
-    who = {0: _short_title(source.title) or key, 1: names[0] if names else ""}.get(len(names))
-    if who is None:
-        who = " & ".join(names) if len(names) == 2 else f"{names[0]} et al."
-    return Citation(key, f"{who} {source.year}".strip(), True)
+    return Citation(key, _label(source.authors, source.year, source.title) or key, True)
+
+
+@cache
+def _label(authors: tuple[str, ...], year: str, title: str) -> str:
+    names = [_family(author) for author in authors]
+    if not names:
+        who = _short_title(title)
+    elif len(names) == 1:
+        who = names[0]
+    elif len(names) == 2 and names[1] != "others":  # BibTeX's word for further authors
+        who = " & ".join(names)
+    else:
+        who = f"{names[0]} et al."
+    return f"{who} {year}".strip()
 
 
 def order(source: Any) -> tuple[str, ...]:

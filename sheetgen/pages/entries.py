@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 from markupsafe import Markup
@@ -96,10 +97,15 @@ def percent(share: float) -> str:
     return f"{whole}{numbers.NARROW}%"
 
 
+@lru_cache(maxsize=2**12)
+def _at(value: float, unit: str) -> Markup:
+    return numbers.with_unit(numbers.printed(value), unit)
+
+
 def where(item: Any) -> Markup:
     """The condition that an entry, a confrontation or a check was taken at: '293.15 K', '1.96 eV', '5 nm' or a name."""
     get = item.get if isinstance(item, dict) else lambda name: getattr(item, name, None)
     for axis, unit in (("temperature", "K"), ("photon_energy", "eV"), ("edge", "nm")):
         if (value := get(axis)) is not None:
-            return numbers.with_unit(numbers.printed(value), unit)
+            return _at(value, unit)
     return Markup.escape(get("specimen") or "")

@@ -10,14 +10,17 @@ from markupsafe import Markup
 from . import numbers
 from .citations import safe_link
 
-_ESCAPES = str.maketrans({"<": "\\u003c", ">": "\\u003e", "&": "\\u0026", "\u2028": "\\u2028", "\u2029": "\\u2029"})
+_ESCAPES = {"<": "\\u003c", ">": "\\u003e", "&": "\\u0026", "\u2028": "\\u2028", "\u2029": "\\u2029"}
 
 _WITH = "with uncertainty, source and standing against measurement"
 
 
 def embedded(data: dict[str, Any]) -> Markup:
     """JSON that can stand inside a script element whatever its texts say."""
-    return Markup(json.dumps(data, ensure_ascii=False, sort_keys=False).translate(_ESCAPES))
+    text = json.dumps(data, ensure_ascii=False)
+    for sign, escape in _ESCAPES.items():
+        text = text.replace(sign, escape)
+    return Markup(text)
 
 
 def material(sheet: Any, handbook: Any, definitions: dict[str, Any]) -> Markup:

@@ -51,8 +51,13 @@ class Printed:
     @property
     def html(self) -> Markup:
         """The number with a real superscript."""
-        power = f"<wbr>{NARROW}{TIMES}{NARROW}10<sup>{signed(self.exponent)}</sup>" if self.exponent else ""
-        return Markup(self.mantissa + power)
+        return _html(self)
+
+
+@lru_cache(maxsize=2**16)
+def _html(number: Printed) -> Markup:
+    power = f"<wbr>{NARROW}{TIMES}{NARROW}10<sup>{signed(number.exponent)}</sup>" if number.exponent else ""
+    return Markup(number.mantissa + power)
 
 
 def superscript(power: int) -> str:
