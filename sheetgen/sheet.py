@@ -313,7 +313,7 @@ class Sheet:
             "constants": CONSTANTS,
             "inputs": {id: _input(value) for id, value in record.inputs.items()},
             "quantities": material.quantities(),
-            "held_against": [_held(confrontation) for confrontation in self.confrontations],
+            "held_against": [_held(one, material.imprint.reference_temperature) for one in self.confrontations],
             "assumptions": [check.as_json() for check in self.checks],
             "specimens": [
                 {"name": row.specimen.name, "form": row.specimen.form, "quantities": row.quantities()}
@@ -337,7 +337,7 @@ def _input(value: Value) -> dict:
     return {**stated, "sources": list(value.sources), "recalled": value.recalled}
 
 
-def _held(confrontation: Confrontation) -> dict:
+def _held(confrontation: Confrontation, reference_temperature: float) -> dict:
     factor = si_factor(confrontation.unit)
     stated: dict = {"quantity": confrontation.quantity}
     if confrontation.ratio is not None:
@@ -346,7 +346,9 @@ def _held(confrontation: Confrontation) -> dict:
     if confrontation.ratio is not None:
         stated["ratio"] = confrontation.ratio
     stated |= {"standing": confrontation.standing, "sources": list(confrontation.sources)}
-    for axis in ("temperature", "photon_energy", "specimen"):
-        if (at := getattr(confrontation, axis)) is not None:
-            stated[axis] = at if isinstance(at, str) else tidy(at)
+    axes = ("temperature", "photon_energy", "specimen")
+    where = {axis: at for axis in axes if (at := getattr(confrontation, axis)) is not None}
+    # A measurement that states no temperature counts as taken at the reference temperature.
+    where = where or {"temperature": reference_temperature}
+    stated |= {axis: at if isinstance(at, str) else tidy(at) for axis, at in where.items()}
     return stated
