@@ -122,18 +122,17 @@ def commands() -> None:
     "--draws",
     metavar="N",
     type=click.IntRange(100, 10_000_000),
-    default=0,
     help="Check each uncertainty by N draws, and state 95 % coverage intervals.",
 )
 @as_json
 @with_traceback
-def press_command(materials: Path, into: Path, draws: int, as_json: bool) -> int:
+def press_command(materials: Path, into: Path, draws: int | None, as_json: bool) -> int:
     """Derive every sheet and publish the site: the whole new one, or at any fault the old one as it stood."""
     from sheetgen.press import FolderRefusedError, press
 
     try:
         with ProgressLine() as progress:
-            pressed = press(_standing(materials), into, progress, draws=draws)
+            pressed = press(_standing(materials), into, progress, draws=draws or 0)
     except FaultsError as error:
         return _at_fault(error.faults, as_json, f"Nothing was published; {into} stands as it stood.")
     except FolderRefusedError as error:
