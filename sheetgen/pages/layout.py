@@ -62,9 +62,10 @@ class _Layout:
         }
 
     def assets(self) -> Iterator[tuple[str, bytes]]:
-        """Style sheet (for the imprint's paper), script and fonts."""
+        """Style sheet (for the imprint's paper), icon, script and fonts."""
         yield "style/handbook.css", self.press.render("style.css", **self.shared)
-        yield "style/table.js", (template_folder() / "table.js").read_bytes()
+        for name in ("icon.svg", "table.js"):
+            yield f"style/{name}", (template_folder() / name).read_bytes()
         for font in sorted((template_folder() / "fonts").iterdir()):
             if font.suffix == ".woff2" or font.name == "OFL.txt":
                 yield f"style/fonts/{font.name}", font.read_bytes()
