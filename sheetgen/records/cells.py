@@ -89,10 +89,14 @@ def overlapping(crystal: Crystal) -> tuple[Site, Site] | None:
 
 
 def nearest_neighbour_distance(crystal: Crystal) -> float:
-    """The shortest distance between two sites in metres, periodic images included."""
+    """The shortest distance between two sites in metres, periodic images included.
+
+    In a cell of more than 100 sites the neighbours of a site are in the cell or at once beside it: one image is enough.
+    """
     positions = np.array([site.position for site in crystal.sites])
     tensor = metric(crystal)
-    images = np.array(list(product((-1, 0, 1), repeat=3)), dtype=float)
+    steps = (-1, 0, 1) if len(positions) <= 100 else (0,)
+    images = np.array(list(product(steps, repeat=3)), dtype=float)
     shortest = np.inf
     for position in positions:
         difference = _wrapped(positions - position)[:, None, :] + images

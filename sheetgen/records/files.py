@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 import stat
+from bisect import bisect
 from pathlib import Path
 
 from sheetgen.faults import FaultLog, MachineError, Place
@@ -54,19 +55,25 @@ def _decoded(data: bytes, place: Place, log: FaultLog) -> str | None:
     except UnicodeDecodeError as error:
         before = data[: error.start].decode("utf-8-sig", errors="replace")
         found = f"the byte 0x{data[error.start]:02x} is not UTF-8"
-        log.fault(place_of(before, len(before), place.file), f"{found}; save the file in the encoding UTF-8.")
+        log.fault(Lines(before, place.file).place(len(before)), f"{found}; save the file in the encoding UTF-8.")
         return None
     if hidden := HIDDEN.search(text):
         log.fault(
-            place_of(text, hidden.start(), place.file),
+            Lines(text, place.file).place(hidden.start()),
             f"the hidden character U+{ord(hidden[0]):04X} stands here; expected visible text. Delete it.",
         )
         return None
     return text
 
 
-def place_of(text: str, position: int, file: str) -> Place:
-    """Where a position in a text is, in lines and columns from 1."""
-    ends = list(_LINE_END.finditer(text, 0, position))
-    start = ends[-1].end() if ends else 0
-    return Place(file, len(ends) + 1, position - start + 1)
+class Lines:
+    """Where positions in a text are, in lines and columns from 1."""
+
+    def __init__(self, text: str, file: str):
+        self.file = file
+        self.starts = [0, *(end.end() for end in _LINE_END.finditer(text))]
+
+    def place(self, position: int) -> Place:
+        """The place of a position counted in characters from 0."""
+        line = bisect(self.starts, position)
+        return Place(self.file, line, position - self.starts[line - 1] + 1)

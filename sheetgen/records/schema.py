@@ -121,7 +121,7 @@ def _structure() -> Schema:
             "lattice": _choice("the name of a lattice", list(LATTICES)),
             "space_group": _text("a space group by symbol or number, such as 'Fm-3m' or 225", 40),
             **{key: _value(measure) for key, measure in measures.STRUCTURE.items()},
-            "atoms": _list("a list of atoms with element and position", atom),
+            "atoms": _list("a list of atoms with element and position", atom, maxItems=500),
             "cif": {"type": "string", "description": "the name of a CIF file beside the record"},
         },
     )

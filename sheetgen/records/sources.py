@@ -8,12 +8,13 @@ from pathlib import Path
 from typing import NamedTuple
 
 from sheetgen.faults import FaultLog, Place
-from sheetgen.records.files import place_of
+from sheetgen.records.files import Lines
 from sheetgen.records.model import Source
 from sheetgen.records.references import link_of, person_name, plain_text, reference
 from sheetgen.records.unreadable import UnreadableError, sentence, shown
 
 MAXIMUM_BYTES = 4_000_000
+MAXIMUM_ENTRIES = 5000
 MAXIMUM_FIELD = 20_000
 
 _PEOPLE = ("author", "editor")
@@ -73,14 +74,19 @@ def _entries(text: str, file: str, log: FaultLog) -> Iterator[_Entry]:
         )
         log.fault(Place(file, error.lineno), message)
 
-    parser = BoundedParser(text, handle_error=note)
-    for kind, content in parser:
+    parser, lines = BoundedParser(text, handle_error=note), Lines(text, file)
+    for count, (kind, content) in enumerate(parser):
         start = parser.command_start
+        if count == MAXIMUM_ENTRIES:
+            log.fault(
+                lines.place(start), f"more than {MAXIMUM_ENTRIES} sources; expected fewer. Keep those that are cited."
+            )
+            return
         if kind.lower() in _NO_SOURCES or content[0] is None:
             continue
         key, fields = content
         joined = [] if start in broken else _joined(fields)
-        yield _Entry(kind.lower(), key, joined, start in broken, place_of(text, start, file), text[start : parser.pos])
+        yield _Entry(kind.lower(), key, joined, start in broken, lines.place(start), text[start : parser.pos])
 
 
 def _joined(fields: list[tuple[str, list[str]]]) -> list[tuple[str, str]]:

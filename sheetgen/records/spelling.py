@@ -19,9 +19,16 @@ _SPLIT = re.compile(r"[ _]+")
 _WORD = re.compile(r"[a-z]+")
 
 
-@lru_cache(maxsize=4096)
+_LONGEST = 80
+
+
 def canonical_key(key: str) -> str:
     """The key as used inside: words joined by underscores, British spelling, `c/a` as `c_over_a`."""
+    return _canonical(key) if len(key) <= _LONGEST else key
+
+
+@lru_cache(maxsize=4096)
+def _canonical(key: str) -> str:
     joined = "_".join(_SPLIT.split(key.strip()))
     return _SPECIAL.get(joined) or british(joined)
 

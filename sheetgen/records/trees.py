@@ -12,7 +12,7 @@ from collections.abc import Iterator
 import yaml
 
 from sheetgen.faults import FaultLog, Place
-from sheetgen.records.files import HIDDEN, place_of
+from sheetgen.records.files import HIDDEN, Lines
 from sheetgen.records.nodes import Entry, Listing, Node, Scalar, Table
 from sheetgen.records.spelling import canonical_key
 from sheetgen.records.unreadable import shown
@@ -37,7 +37,7 @@ def read_tree(text: str, file: str, log: FaultLog, example: str = "name: Copper"
     Bounded: a tree that is deeper or larger than a record needs is a fault, and so is every alias and tag.
     """
     if tab := _TAB.search(text):
-        log.fault(place_of(text, tab.end() - 1, file), "a tab indents this line; YAML wants spaces. Replace it.")
+        log.fault(Lines(text, file).place(tab.end() - 1), "a tab indents this line; YAML wants spaces. Replace it.")
         return None
     builder = _Builder(file, log, example)
     try:

@@ -32,9 +32,16 @@ _NUMBERS = [
 ]
 
 
-@lru_cache(maxsize=4096)
+_LONGEST = 80
+
+
 def surprise(text: str) -> str | None:
     """What is wrong with a plain word, and how to write it; None for a word that every reader takes alike."""
+    return _surprise(text) if len(text) <= _LONGEST else None
+
+
+@lru_cache(maxsize=4096)
+def _surprise(text: str) -> str | None:
     if _TRUTH.fullmatch(text):
         found = f"the word {shown(text)} is a truth value in YAML 1.1"
         mend = " The day of a review is 'date'." if text.lower() == "on" else ""

@@ -177,7 +177,7 @@ BROKEN = [
     ),
     (
         RUTILE.split("loop_")[0],
-        "m/x.cif: 0 atom sites with fractional coordinates; expected 1 to 1000."
+        "m/x.cif: 0 atom sites with fractional coordinates; expected 1 to 500."
         " Give the loop of _atom_site_fract_x, y and z.",
     ),
     (

@@ -123,6 +123,13 @@ def test_abbreviations_that_blow_up_are_refused_at_once(faults):
     assert f"m/sources.bib:11: not readable as BibTeX: a field of more than 20000 characters. {MEND}" in found
 
 
+def test_a_huge_bibliography_is_refused_in_bounded_time(faults):
+    began = time.perf_counter()
+    found = faults(record=None, sources="".join(f"@misc{{k{number},title={{x}}}}\n" for number in range(100_000)))
+    assert found == ["m/sources.bib:5001:1: more than 5000 sources; expected fewer. Keep those that are cited."]
+    assert time.perf_counter() - began < 5
+
+
 def test_without_a_bibliography_only_citing_is_a_fault(faults):
     assert faults(record="name: X\nformula: Cu\n", sources=None) == []
     assert faults(sources=None)[0] == (

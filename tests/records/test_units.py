@@ -6,6 +6,7 @@ import subprocess
 import sys
 import time
 
+import pint
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
@@ -13,6 +14,11 @@ from hypothesis import strategies as st
 from sheetgen.records import dimension_matches, si_factor, to_si
 from sheetgen.records.units import _library_unit, _usual_units, read_unit
 from sheetgen.records.unreadable import UnreadableError
+
+
+@pytest.fixture(scope="module")
+def registry():
+    return pint.UnitRegistry()
 
 
 @pytest.mark.parametrize(
@@ -58,10 +64,8 @@ from sheetgen.records.unreadable import UnreadableError
         ("K/°C", "kelvin / delta_degree_Celsius"),
     ],
 )
-def test_unit_is_what_the_library_makes_of_its_plain_form(written, plain):
-    import pint
-
-    expected = pint.UnitRegistry().Quantity(1.0, plain).to_base_units()
+def test_unit_is_what_the_library_makes_of_its_plain_form(registry, written, plain):
+    expected = registry.Quantity(1.0, plain).to_base_units()
     unit = read_unit(written)
     assert unit.factor == pytest.approx(expected.magnitude, rel=1e-12)
     powers = {base: power for base, power in expected.unit_items() if base != "radian"}
