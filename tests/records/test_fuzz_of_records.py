@@ -140,7 +140,7 @@ def test_random_trees(write, tree, base):
     outcome(write(record=yaml.safe_dump(tree, allow_unicode=True)))
 
 
-@settings(max_examples=500, deadline=None)
+@settings(max_examples=200, deadline=None)
 @given(tree=st.dictionaries(KEYS.map(canonical_key), TREES, max_size=6), base=st.booleans())
 def test_the_quick_look_never_accepts_what_the_library_would_not(tree, base):
     if base:
