@@ -80,6 +80,15 @@ def _standing(folder: Path) -> Path:
     raise WrongWordError(f"There is no folder {folder}.{guess}")
 
 
+def _file(path: Path) -> Path:
+    """The file itself, where it stands; else a line that guesses which one was meant."""
+    if path.is_file():
+        return path
+    beside = path.parent.iterdir() if path.parent.is_dir() else ()
+    guess = did_you_mean(path.name, [entry.name for entry in beside if entry.is_file()])
+    raise WrongWordError(f"There is no file {path}.{guess}")
+
+
 materials = click.argument(
     "materials",
     cls=Argument,
@@ -198,6 +207,43 @@ def proof_command(materials: Path, strict: bool, site: Path | None, as_json: boo
         _list(handbook.remarks)
         remarks = _count(len(handbook.remarks), "remark")
         click.echo(f"{materials}: {_count(len(handbook.sheets), 'record')} in order, {remarks}.")
+    return DONE
+
+
+@commands.command(
+    "draft", cls=Command, examples=["sheetgen draft TiN", "sheetgen draft --cif quartz.cif --materials materials"]
+)
+@click.argument("formula", cls=Argument, required=False, said="such as Cu, TiN or Al0.3Ga0.7As")
+@click.option(
+    "--cif", metavar="FILE", type=click.Path(path_type=Path), help="Take cell, sites and publication from a CIF."
+)
+@click.option(
+    "--materials",
+    metavar="FOLDER",
+    type=click.Path(path_type=Path),
+    default=MATERIALS,
+    help="The folder of records [default: materials].",
+)
+@click.option("--name", metavar="NAME", default="", help="What the material is called, where the usual name is taken.")
+@as_json
+@with_traceback
+def draft_command(formula: str | None, cif: Path | None, materials: Path, name: str, as_json: bool) -> int:
+    """Start a record: what follows from a formula or a CIF is filled in, the rest says what belongs there."""
+    from sheetgen.drafting import DraftRefusedError, FormulaRefusedError, draft_cif, draft_formula
+
+    if (formula is None) == (cif is None):
+        raise WrongWordError("Give either a formula, as in: sheetgen draft Cu, or a CIF, as in: --cif quartz.cif")
+    folder = _standing(materials)
+    try:
+        drafted = draft_formula(formula or "", folder, name) if cif is None else draft_cif(_file(cif), folder, name)
+    except (FormulaRefusedError, DraftRefusedError) as error:
+        raise WrongWordError(str(error)) from error
+    except FaultsError as error:
+        return _at_fault(error.faults, as_json, "Nothing was written.")
+    if as_json:
+        _print_json(drafted.as_json())
+    else:
+        _list(drafted.lines(), err=False)
     return DONE
 
 

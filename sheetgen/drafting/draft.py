@@ -1,0 +1,240 @@
+"""Drafts: the first text of a record, written beside those that stand and over none of them."""
+
+from __future__ import annotations
+
+import os
+from contextlib import ExitStack
+from dataclasses import dataclass, replace
+from pathlib import Path
+from tempfile import NamedTemporaryFile, TemporaryDirectory
+
+from sheetgen.drafting.bibliography import FILE_NAME, Cited, appended, cite, read_bibliography
+from sheetgen.drafting.cif import Deposit, read_deposit
+from sheetgen.drafting.compounds import usual_name
+from sheetgen.drafting.naming import slug_of, taken
+from sheetgen.drafting.record_text import Material, record_text
+from sheetgen.drafting.structure_text import cif_structure, explicit_structure
+from sheetgen.drafting.suggestions import read_formula
+from sheetgen.faults import FaultsError, MachineError
+from sheetgen.records import Crystal, Record, read_folder
+
+IMPRINT = "handbook.yaml"
+IMPRINT_TEXT = """\
+# The imprint: what the handbook is and who answers for it.
+title: Handbook of our materials
+edition: "1"
+# group: ?
+# licence: ?          # such as CC-BY-4.0
+# contact: ?          # a mail address or a web address
+"""
+_STAGED_IMPRINT = "title: Staging\n"
+
+
+class DraftRefusedError(Exception):
+    """There is no room for what was asked for; one line that says why and how to mend it. Nothing was written."""
+
+
+@dataclass(frozen=True)
+class Drafted:
+    """What a draft wrote. `cif` and `source` are None for a draft from a formula, or where the CIF names none."""
+
+    record: Path
+    name: str
+    formula: str
+    assumed: str
+    written: tuple[Path, ...]
+    cif: Path | None = None
+    source: Cited | None = None
+
+    def as_json(self) -> dict[str, object]:
+        """The same for a program."""
+        return {
+            "record": str(self.record),
+            "name": self.name,
+            "formula": self.formula,
+            "assumed": self.assumed,
+            "written": [str(path) for path in self.written],
+            "cif": None if self.cif is None else str(self.cif),
+            "source": None if self.source is None else self.source.key,
+        }
+
+    def lines(self) -> list[str]:
+        """The same for a person."""
+        found = [f"{self.record}: draft of {self.name} ({self.formula})."]
+        found += [f"  also      {path}" for path in self.written if path != self.record]
+        if self.source is not None:
+            found.append(f"  cites     {self.source.key}{'' if self.source.addition else ', which stands already'}")
+        if self.assumed:
+            found.append(f"  assumed   {self.assumed}")
+        return [*found, f"  next      fill in the blanks, then: sheetgen proof {self.record.parent}"]
+
+
+def draft_formula(formula: str, folder: Path, name: str = "") -> Drafted:
+    """Start a record from a formula.
+
+    Raises FormulaRefusedError for what is no formula, DraftRefusedError where a file of that name stands already,
+    and MachineError where it cannot be written.
+    """
+    written, composition = read_formula(formula)
+    material = Material(name or usual_name(written, composition), written, composition)
+    record = _room(folder, material)
+    return _drafted(record, material, _write(folder, {record: record_text(material)}))
+
+
+def draft_cif(path: Path, folder: Path, name: str = "") -> Drafted:
+    """Start a record from a CIF; the file is copied beside the record, its publication joins sources.bib.
+
+    Raises FaultsError with file:line where the CIF or sources.bib cannot be used, and as `draft_formula` does.
+    """
+    deposit = read_deposit(path)
+    formula, composition = read_formula(deposit.formula)
+    title = name or deposit.name or usual_name(formula, composition)
+    material = Material(title, formula, composition, origin=f"Cell and sites are those of {path.name}.")
+    record = _room(folder, material)
+    copy = _copy_of(path, deposit, folder, record)
+    bibliography, sources = read_bibliography(folder)
+    source = cite(deposit.publication, sources, record.stem) if deposit.publication else None
+    text = _proven(material, deposit, copy, source)
+    files = {copy: deposit.text, record: text} if not copy.exists() else {record: text}
+    addition = source.addition if source else ""
+    done = _write(folder, files, bibliography, addition)
+    return replace(_drafted(record, material, done), cif=copy, source=source)
+
+
+def _drafted(record: Path, material: Material, written: tuple[Path, ...]) -> Drafted:
+    found = material.valences
+    counts = ", ".join(f"{element} {count}" for element, count in found.electrons.items())
+    assumed = f"valence {counts}: {found.reason}" if counts else f"no valence: {found.reason}"
+    return Drafted(record, material.name, material.formula, assumed, written)
+
+
+def _room(folder: Path, material: Material) -> Path:
+    """The path of the new record, where there is room for it."""
+    slug = slug_of(material.name) or slug_of(material.formula)
+    if not slug:
+        raise DraftRefusedError(f"No file name follows from '{material.name}'. Choose one with --name.")
+    if standing := taken(folder, slug):
+        raise DraftRefusedError(
+            f"{standing} stands already and is left alone. For another record give another name, as in: "
+            f"--name '{material.name} film'"
+        )
+    return folder / f"{slug}.yaml"
+
+
+def _copy_of(path: Path, deposit: Deposit, folder: Path, record: Path) -> Path:
+    """Where the CIF stands beside the record: the file itself, one with the same content, or a new copy."""
+    if path.resolve().parent == folder.resolve():
+        return path
+    copy = record.with_suffix(".cif")
+    if copy.exists() and copy.read_text(encoding="utf-8", errors="replace") != deposit.text:
+        raise DraftRefusedError(f"{copy} stands already and holds something else. Give the record another --name.")
+    return copy
+
+
+# ---------------------------------------------------------------- proof before anything is written
+
+
+def _proven(material: Material, deposit: Deposit, copy: Path, source: Cited | None) -> str:
+    """The text of a record that reads as the same crystal: sites spelt out, else a reference to the CIF."""
+    key = source.key if source else ""
+    for structure in (explicit_structure(deposit, copy.name, key), cif_structure(deposit, copy.name, key)):
+        text = record_text(replace(material, structure=structure))
+        try:
+            read = _read_staged(text, deposit, copy.name, source)
+        except FaultsError:
+            continue
+        if read.crystal is not None and _same_crystal(read.crystal, deposit.crystal):
+            return text
+    # The file's own faults were reported when it was read; what is left is a name that no record may refer to.
+    raise DraftRefusedError(
+        f"{copy.name} cannot be named in a record. Rename it to letters, digits and hyphens with the ending .cif."
+    )
+
+
+def _read_staged(text: str, deposit: Deposit, cif_name: str, source: Cited | None) -> Record:
+    """The record as the program reads it, in a folder that holds nothing else."""
+    with TemporaryDirectory(prefix="sheetgen-") as name:
+        folder = Path(name)
+        (folder / IMPRINT).write_text(_STAGED_IMPRINT, encoding="utf-8")
+        bibliography = source.addition or f"@misc{{{source.key}, title = {{Cited}}}}\n" if source else ""
+        (folder / FILE_NAME).write_text(bibliography, encoding="utf-8")
+        (folder / cif_name).write_text(deposit.text, encoding="utf-8")
+        (folder / "staged.yaml").write_text(text, encoding="utf-8")
+        return read_folder(folder).records[0]
+
+
+def _same_crystal(one: Crystal, other: Crystal) -> bool:
+    return _signature(one) == _signature(other)
+
+
+def _signature(crystal: Crystal) -> tuple[object, ...]:
+    """Cell, ties and sites of a crystal, rounded to what no reading changes."""
+    keys = ("a", "b", "c", "c_over_a", "alpha", "beta", "gamma")
+    constants = [getattr(value, "si", value) for value in (getattr(crystal, key) for key in keys)]
+    sites = sorted((s.element, *(round(x, 6) % 1 for x in s.position), round(s.occupancy, 6)) for s in crystal.sites)
+    return ([None if c is None else float(f"{c:.10g}") for c in constants], crystal.angles_tied, sites)
+
+
+# ---------------------------------------------------------------- writing
+
+
+def _write(folder: Path, files: dict[Path, str], bibliography: str = "", addition: str = "") -> tuple[Path, ...]:
+    """Write new files, an imprint where there is none, and one more source; at any fault take back what is new."""
+    texts = dict(files)
+    if not taken_imprint(folder):
+        texts = {folder / IMPRINT: IMPRINT_TEXT, **texts}
+    written: list[Path] = []
+    with ExitStack() as undo:
+        try:
+            for path, text in texts.items():
+                _create(path, text, undo)
+                written.append(path)
+            if addition:
+                _append_source(folder / FILE_NAME, bibliography, addition)
+                written.append(folder / FILE_NAME)
+        except FileExistsError as error:
+            raise DraftRefusedError(f"{error.filename} stands already and is left alone.") from error
+        except OSError as error:
+            raise MachineError(f"cannot write {error.filename or folder}: {error.strerror or error}") from error
+        undo.pop_all()
+    return tuple(written)
+
+
+def taken_imprint(folder: Path) -> bool:
+    """Whether a folder has an imprint, in whatever spelling."""
+    return any(entry.name.lower() in (IMPRINT, "handbook.yml") for entry in folder.iterdir())
+
+
+def _create(path: Path, text: str, undo: ExitStack) -> None:
+    """Write a file that is not there yet; raises FileExistsError for one that is."""
+    with path.open("x", encoding="utf-8", newline="\n") as stream:
+        undo.callback(path.unlink, missing_ok=True)
+        stream.write(text)
+
+
+def _append_source(path: Path, expected: str, addition: str) -> None:
+    """Put a whole new file in the place of sources.bib: at no moment is there half of one."""
+    standing = path.read_bytes() if path.exists() else b""
+    if standing.decode("utf-8-sig") != expected:
+        raise DraftRefusedError(f"{path} has just been changed by someone else. Draft again.")
+    target = path.resolve()
+    gap = appended(expected, addition)[len(expected) :]
+    mode = target.stat().st_mode & 0o777 if target.exists() else 0o666 & ~_umask()
+    with NamedTemporaryFile("wb", dir=target.parent, prefix=".sources-", delete=False) as stream:
+        temporary = Path(stream.name)
+        try:
+            stream.write(standing + gap.encode())
+            stream.flush()
+            os.fsync(stream.fileno())
+            temporary.chmod(mode)
+            temporary.replace(target)
+        except BaseException:
+            temporary.unlink(missing_ok=True)
+            raise
+
+
+def _umask() -> int:
+    """The mask that new files get, which can only be read by setting it."""
+    mask = os.umask(0)
+    os.umask(mask)
+    return mask
