@@ -105,6 +105,15 @@ def measured_inputs(measured: dict[str, tuple[Value, ...]], reference: float) ->
     return inputs
 
 
+def optical_inputs(points: Iterable[OpticalPoint]) -> dict[str, Value]:
+    """Every value of the measured refractive indices by its id, counted from 1."""
+    return {
+        f"measured.refractive_index.{number}.{key}": getattr(point, key)
+        for number, point in enumerate(points, start=1)
+        for key in OPTICAL
+    }
+
+
 def _unused(name: str, taken: dict[str, Value]) -> str:
     count, free = 1, name
     while free in taken:

@@ -8,8 +8,7 @@ from pathlib import Path
 from sheetgen.faults import FaultLog, Place
 from sheetgen.records.electrons import read_electrons
 from sheetgen.records.formulas import composition as composition_of
-from sheetgen.records.measured import check_residual, measured_inputs, read_measured, read_optical
-from sheetgen.records.measures import OPTICAL
+from sheetgen.records.measured import check_residual, measured_inputs, optical_inputs, read_measured, read_optical
 from sheetgen.records.model import Caution, Crystal, Electrons, Record, Review, Value
 from sheetgen.records.nodes import Listing, Scalar, Table
 from sheetgen.records.shape import has_record_shape
@@ -47,12 +46,7 @@ def _record(root: Table, path: Path, reader: Reader, folder: Path, reference: fl
     specimens = read_specimens(root.node("specimens") or Listing([], root.place), crystal, reader)
     inputs = {f"structure.{key}": value for key, value in constants.items()}
     inputs |= {f"electrons.{key}": value for key, value in electron_values.items()}
-    inputs |= measured_inputs(measured, reference)
-    inputs |= {
-        f"measured.refractive_index.{number}.{key}": getattr(point, key)
-        for number, point in enumerate(optical, start=1)
-        for key in OPTICAL
-    }
+    inputs |= measured_inputs(measured, reference) | optical_inputs(optical) | specimen_inputs(specimens)
     return Record(
         slug=path.stem,
         name=text_of(root.node("name")),
@@ -69,7 +63,7 @@ def _record(root: Table, path: Path, reader: Reader, folder: Path, reference: fl
         path=path,
         place=Place(str(path), 1, 1),
         remarks=tuple(reader.log.remarks),
-        inputs=inputs | specimen_inputs(specimens),
+        inputs=inputs,
     )
 
 
