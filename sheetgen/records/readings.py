@@ -53,7 +53,6 @@ def _unit_of(number: Number, measure: Measure, text: str) -> tuple[str, Unit]:
 
 _LACKING = {
     "m": "length",
-    "m^2": "area",
     "m^3": "volume",
     "K": "temperature",
     "K^2": "squared temperature",
@@ -66,6 +65,8 @@ _SLIPS = {"A": "Å", "C": "°C", "k": "K", "G": "GPa"}
 
 def _mend(written: str, unit: Unit, wanted: Unit) -> str:
     """A closing sentence for a wrong dimension: the unit that was meant, or the factor that is lacking."""
+    if not wanted.dimension and not wanted.angle:
+        return " Write the number alone"
     for meant in (_SLIPS.get(written), _bracketed(written)):
         if meant and _dimension(meant) == wanted.dimension:
             return f" Write {shown(meant)}"
