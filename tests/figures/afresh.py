@@ -73,7 +73,7 @@ def curve_paths(plot: Plot) -> list[tuple[str, np.ndarray]]:
             left, bottom, width, tall = panel.box
             for line in axes.lines:
                 # Rules have an axis of their own for one coordinate.
-                if line.get_gid().startswith("l-") and line.get_transform() == axes.transData:
+                if (line.get_gid() or "").startswith("l-") and line.get_transform() == axes.transData:
                     x, y = line.get_transform().transform(np.column_stack(line.get_data())).T
                     inside = (x >= left) & (x <= left + width) & (y >= bottom) & (y <= bottom + tall)
                     drawn.append((line.get_gid(), np.column_stack((x, plot.height - y))[inside]))
