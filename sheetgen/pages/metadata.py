@@ -61,7 +61,7 @@ def whole(handbook: Any) -> Markup:
 
 def _common(handbook: Any) -> dict[str, Any]:
     imprint = handbook.imprint
-    licence = {"license": imprint.licence} if imprint.licence else {}
+    licence = {"license": {"@type": "CreativeWork", "name": imprint.licence}} if imprint.licence else {}
     return {
         "@context": "https://schema.org",
         "@type": "Dataset",

@@ -139,13 +139,19 @@ def factor(value: float, uncertainty: float | None) -> Markup:
     return numbers.printed(value if uncertainty else float(f"{value:.3g}"), uncertainty).html
 
 
+_MONTHS = (  # not by strftime, which speaks the language of the machine
+    "January", "February", "March", "April", "May", "June", "July", "August", "September", "October", "November",
+    "December",
+)  # fmt: skip
+
+
 def date(text: str) -> str:
     """An ISO 8601 date in words, as 2 November 2026; any other text as it stands."""
     try:
         day = datetime.date.fromisoformat(text)
     except ValueError:
         return text
-    return f"{day.day} {day:%B} {day.year}"
+    return f"{day.day} {_MONTHS[day.month - 1]} {day.year}"
 
 
 def language(tag: str) -> str:
