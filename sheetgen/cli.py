@@ -17,6 +17,7 @@ from sheetgen.terminal import Argument, Command, Commands, ProgressLine, WrongWo
 DONE, RECORDS, COMMAND_LINE, MACHINE, INTERRUPTED = 0, 1, 2, 3, 130
 MATERIALS = Path("materials")
 SITE = Path("site")
+PORT = 8930
 
 
 def run(words: Sequence[str]) -> int:
@@ -321,6 +322,33 @@ def errata_command(old: str, new: str, materials: Path, as_json: bool) -> int:
         _print_json(found.as_json())
     else:
         _list(lines(found), err=False)
+    return DONE
+
+
+@commands.command("galley", cls=Command, examples=["sheetgen galley materials", "sheetgen galley --port 0"])
+@materials
+@click.option(
+    "--port",
+    metavar="N",
+    type=click.IntRange(0, 65535),
+    default=PORT,
+    help=f"The port on this machine; 0 takes a free one [default: {PORT}].",
+)
+@with_traceback
+def galley_command(materials: Path, port: int) -> int:
+    """Serve the handbook on this machine only, press it anew as records are saved, until Ctrl-C."""
+    from sheetgen.galley import run
+
+    def opened(address: str) -> None:
+        progress.clear()
+        click.echo(address)
+
+    def told(line: str) -> None:
+        progress.clear()
+        click.echo(line, err=True)
+
+    with ProgressLine() as progress:
+        run(_standing(materials), port, opened, told, progress)
     return DONE
 
 

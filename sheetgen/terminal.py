@@ -96,6 +96,10 @@ class ProgressLine:
         return self
 
     def __exit__(self, *_reason: object) -> None:
+        self.clear()
+
+    def clear(self) -> None:
+        """Take the line away, to make room for one that stays."""
         self._write("")
 
     def __call__(self, step: str, done: int, total: int) -> None:
