@@ -185,12 +185,18 @@ def press_command(materials: Path, into: Path, draws: int | None, as_json: bool)
     type=click.Path(path_type=Path),
     help="Leave the records alone, and hold a published folder against its manifest.",
 )
+@click.option(
+    "--sarif",
+    metavar="FILE",
+    type=click.Path(path_type=Path, dir_okay=False),
+    help="Also write what was found as SARIF 2.1.0, which code hosts show beside the lines.",
+)
 @as_json
 @with_traceback
-def proof_command(materials: Path, strict: bool, site: Path | None, as_json: bool) -> int:
+def proof_command(materials: Path, strict: bool, site: Path | None, sarif: Path | None, as_json: bool) -> int:
     """Read and derive everything, list what is at fault and what to know, publish nothing."""
     if site is not None:
-        return _proof_of_site(site, as_json)
+        return _proof_of_site(site, sarif, as_json)
     from sheetgen.handbook import Handbook
 
     try:
@@ -200,7 +206,9 @@ def proof_command(materials: Path, strict: bool, site: Path | None, as_json: boo
             if strict:
                 handbook.require_strict()
     except FaultsError as error:
+        _write_sarif(error.faults, sarif)
         return _at_fault(error.faults, as_json)
+    _write_sarif(handbook.remarks, sarif)
     if as_json:
         remarks = [_fault_json(remark) for remark in handbook.remarks]
         _print_json({"sheets": len(handbook.sheets), "faults": [], "remarks": remarks})
@@ -352,13 +360,14 @@ def galley_command(materials: Path, port: int) -> int:
     return DONE
 
 
-def _proof_of_site(site: Path, as_json: bool) -> int:
+def _proof_of_site(site: Path, sarif: Path | None, as_json: bool) -> int:
     from sheetgen.press import FolderRefusedError, deviations
 
     try:
         found = deviations(_standing(site))
     except FolderRefusedError as error:
         raise WrongWordError(str(error)) from error
+    _write_sarif(found, sarif)
     faults = [fault for fault in found if fault.severity == "fault"]
     _list(fault for fault in found if fault.severity == "remark")
     if faults:
@@ -368,6 +377,13 @@ def _proof_of_site(site: Path, as_json: bool) -> int:
     else:
         click.echo(f"{site}: every file is as it was published.")
     return DONE
+
+
+def _write_sarif(found: Iterable[Fault], file: Path | None) -> None:
+    if file is not None:
+        from sheetgen.sarif import sarif_log
+
+        file.write_text(json.dumps(sarif_log(found, Path.cwd()), indent=1, ensure_ascii=False) + "\n", encoding="utf-8")
 
 
 def _at_fault(faults: Sequence[Fault], as_json: bool, closing: str = "") -> int:
