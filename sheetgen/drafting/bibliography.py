@@ -8,7 +8,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
 
-from sheetgen.faults import FaultLog
+from sheetgen.faults import Fault, FaultLog, FaultsError, Place
 from sheetgen.records import Source
 from sheetgen.records.files import read_text
 from sheetgen.records.references import link_of
@@ -107,6 +107,17 @@ def appended(text: str, addition: str) -> str:
         return addition
     gap = "" if text.endswith("\n\n") else "\n" if text.endswith("\n") else "\n\n"
     return f"{text}{gap}{addition}"
+
+
+def check_addition(folder: Path, text: str, cited: Cited) -> None:
+    """Raise FaultsError where the end of the file would swallow a new entry, as an open brace does."""
+    path = folder / FILE_NAME
+    log = FaultLog()
+    before, after = (read_sources(whole, path, log) for whole in (text, appended(text, cited.addition)))
+    if log.faults or after.keys() != before.keys() | {cited.key}:
+        last = Place(str(path), text.count("\n") + 1)
+        message = "an entry behind the last one would not be read. Close the brace, or end the comment, that is open."
+        raise FaultsError([Fault(last, message)])
 
 
 def _key(publication: Publication, fallback: str) -> str:

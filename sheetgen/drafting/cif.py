@@ -242,9 +242,9 @@ def _authors(block: gemmi.cif.Block) -> list[str]:
     names = [plain_text(cif.as_string(raw)) for raw in block.find_values("_publ_author_name")]
     if not names:
         wanted = _text(block, "_citation_author_citation_id")
-        for row in block.find("_citation_author_", ["?citation_id", "name"]):
-            if not row.has(0) or row.str(0) == wanted:
-                names.append(plain_text(row.str(1)))
+        for row in block.find("_citation_author_", ["name", "?citation_id"]):
+            if not row.has(1) or row.str(1) == wanted:
+                names.append(plain_text(row.str(0)))
     return [name for name in names if name not in ("", "?", ".")]
 
 

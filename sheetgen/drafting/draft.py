@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from pathlib import Path
 from tempfile import NamedTemporaryFile, TemporaryDirectory
 
-from sheetgen.drafting.bibliography import FILE_NAME, Cited, appended, cite, read_bibliography
+from sheetgen.drafting.bibliography import FILE_NAME, Cited, appended, check_addition, cite, read_bibliography
 from sheetgen.drafting.cif import Deposit, read_deposit
 from sheetgen.drafting.compounds import usual_name
 from sheetgen.drafting.naming import slug_of, taken
@@ -17,7 +17,9 @@ from sheetgen.drafting.structure_text import cif_structure, explicit_structure
 from sheetgen.drafting.suggestions import read_formula
 from sheetgen.faults import FaultsError, MachineError
 from sheetgen.records import Crystal, Record, read_folder
+from sheetgen.records.files import HIDDEN
 
+LONGEST_NAME = 200
 IMPRINT = "handbook.yaml"
 IMPRINT_TEXT = """\
 # The imprint: what the handbook is and who answers for it.
@@ -94,6 +96,8 @@ def draft_cif(path: Path, folder: Path, name: str = "") -> Drafted:
     copy = _copy_of(path, deposit, folder, record)
     bibliography, sources = read_bibliography(folder)
     source = cite(deposit.publication, sources, record.stem) if deposit.publication else None
+    if source and source.addition:
+        check_addition(folder, bibliography, source)
     text = _proven(material, deposit, copy, source)
     files = {copy: deposit.text, record: text} if not copy.exists() else {record: text}
     addition = source.addition if source else ""
@@ -110,6 +114,8 @@ def _drafted(record: Path, material: Material, written: tuple[Path, ...]) -> Dra
 
 def _room(folder: Path, material: Material) -> Path:
     """The path of the new record, where there is room for it."""
+    if HIDDEN.search(material.name) or not 0 < len(material.name.strip()) <= LONGEST_NAME:
+        raise DraftRefusedError(f"--name is no name; expected up to {LONGEST_NAME} visible characters, such as Copper.")
     slug = slug_of(material.name) or slug_of(material.formula)
     if not slug:
         raise DraftRefusedError(f"No file name follows from '{material.name}'. Choose one with --name.")
@@ -181,7 +187,7 @@ def _signature(crystal: Crystal) -> tuple[object, ...]:
 def _write(folder: Path, files: dict[Path, str], bibliography: str = "", addition: str = "") -> tuple[Path, ...]:
     """Write new files, an imprint where there is none, and one more source; at any fault take back what is new."""
     texts = dict(files)
-    if not taken_imprint(folder):
+    if not _has_imprint(folder):
         texts = {folder / IMPRINT: IMPRINT_TEXT, **texts}
     written: list[Path] = []
     with ExitStack() as undo:
@@ -200,7 +206,7 @@ def _write(folder: Path, files: dict[Path, str], bibliography: str = "", additio
     return tuple(written)
 
 
-def taken_imprint(folder: Path) -> bool:
+def _has_imprint(folder: Path) -> bool:
     """Whether a folder has an imprint, in whatever spelling."""
     return any(entry.name.lower() in (IMPRINT, "handbook.yml") for entry in folder.iterdir())
 
