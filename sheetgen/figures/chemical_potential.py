@@ -73,7 +73,7 @@ def _occupations(subject: Subject, reach: float) -> tuple:
     ]
     layers.append(Rule("", x=0.0))
     if level < reach * MILLIELECTRONVOLT:
-        layers.append(Rule("band bottom", x=-level / MILLIELECTRONVOLT, look="edge"))
+        layers.append(Rule("band bottom", x=-level / MILLIELECTRONVOLT, look="level"))
     return tuple(layers)
 
 

@@ -8,6 +8,7 @@ import numpy as np
 
 from sheetgen.figures.layout import BOTTOM, LEGEND_ROW, RIGHT, TOP
 from sheetgen.figures.plot import Area, Axis, Figure, Key, Note, Panel, Plot, Points, Rule
+from sheetgen.figures.ranking import opposite_sign
 from sheetgen.figures.scales import decades
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.style import WIDTH
@@ -37,20 +38,20 @@ def plot(subject: Subject) -> Plot:
     rows = _rows(subject)
     ratios = np.array([abs(one.ratio) for entries in rows.values() for one in entries])
     fitting = (pair for pair in RANGES if pair[0] < ratios.min() and ratios.max() < pair[1])
-    low, high = next(fitting, None) or decades([*ratios, 1.0])
+    axis = Axis("measured / model", *(next(fitting, None) or decades([*ratios, 1.0])), "log")
     count = len(rows)
-    height = BOTTOM + TOP + 2 * LEGEND_ROW + ROW * count + 4
+    height = BOTTOM + TOP + LEGEND_ROW + ROW * count + 4
     box = (LABELS, BOTTOM, WIDTH - LABELS - RIGHT, ROW * count + 4)
     standings = [s for s in LOOKS if any(one.standing == s for entries in rows.values() for one in entries)]
     layers = (
         *_bands(count, _thresholds(subject)),
         Rule("", x=1.0, look="axis"),
         *(_markers(rows, standing) for standing in standings),
-        *_labels(rows, low, high),
+        *_labels(rows, axis),
     )
     panel = Panel(
         box,
-        Axis("measured / model", low, high, "log"),
+        axis,
         Axis("", -0.15, count + 0.15, bare=True),
         layers,
         tuple(Key(standing, "points", LOOKS[standing]) for standing in LOOKS),
@@ -85,22 +86,28 @@ def _bands(count: int, thresholds: tuple[float, float]) -> list[Area]:
 
 def _markers(rows: dict[str, list], standing: str) -> Points:
     placed = [
-        (abs(one.ratio), len(rows) - 0.5 - number, one.ratio_uncertainty or 0.0)
-        for number, entries in enumerate(rows.values())
+        (one, len(rows) - 0.5 - number, f"{name}: {standing}{', opposite sign' if one.ratio < 0 else ''}")
+        for number, (name, entries) in enumerate(rows.items())
         for one in entries
         if one.standing == standing
     ]
-    x, y, uncertainty = np.array(placed, dtype=float).T
-    return Points(standing, x, y, LOOKS[standing], x_uncertainty=uncertainty)
+    return Points(
+        standing,
+        np.array([abs(one.ratio) for one, _, _ in placed]),
+        np.array([level for _, level, _ in placed]),
+        LOOKS[standing],
+        x_uncertainty=np.array([one.ratio_uncertainty or 0.0 for one, _, _ in placed]),
+        names=tuple(name for _, _, name in placed),
+    )
 
 
-def _labels(rows: dict[str, list], low: float, high: float) -> list[Note]:
+def _labels(rows: dict[str, list], axis: Axis) -> list[Note]:
     notes = []
     for number, (name, entries) in enumerate(rows.items()):
         level = len(rows) - 0.5 - number
-        notes.append(Note(name, low, level, "end", dx=-4, dy=-2.3))
+        notes.append(Note(name, axis.low, level, "end", dx=-4, dy=-2.3))
         if any(one.ratio < 0 for one in entries):
-            notes.append(Note("opposite sign", high, level, "end", dx=-3, dy=-2.3, ink="two"))
+            notes.append(opposite_sign([abs(one.ratio) for one in entries], axis, level))
     return notes
 
 

@@ -35,7 +35,7 @@ def plot(subject: Subject) -> Plot:
     ]
     if shows_face:
         layers += [Rule("zone face", x=sign * face) for sign in (-1, 1)]
-        layers.append(Note("*k*_{zone}", face, 0, "end", dx=-2.5, dy=3.5))
+        layers.append(_face_note(face, reach))
     layers.append(Note(f"*E*_{{F}} = {number(level)} {unit}", 0, level, "middle", dy=3, ink="two"))
     layers.append(Note(f"*k*_{{F}} = {number(filled_to)} nm⁻¹", 0, 0, "middle", dy=_note_height(level, top)))
     x = Axis("*k* / nm⁻¹", -reach, reach)
@@ -48,6 +48,13 @@ def _parabola(subject: Subject, name: str, reach: float, joules: float, look: st
     wavevector = np.linspace(-reach, reach, 201)
     energies = subject.curve("fermi_energy", fermi_wavevector=wavevector / NANOMETRE)
     return Curve(name, wavevector, energies / joules, look)
+
+
+def _face_note(face: float, reach: float) -> Note:
+    """The name of the zone face at its foot: outside, under the parabola, where the axis goes on far enough."""
+    outside = (reach - face) / (2 * reach) * single(1)[2] > 26
+    anchor, shift = ("start", 2.5) if outside else ("end", -2.5)
+    return Note("*k*_{zone}", face, 0, anchor, dx=shift, dy=3.5)
 
 
 def _note_height(level: float, top: float) -> float:

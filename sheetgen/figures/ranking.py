@@ -10,7 +10,7 @@ import numpy as np
 from sheetgen.figures.layout import BOTTOM, LEGEND_ROW, RIGHT, TOP
 from sheetgen.figures.markup import from_latex
 from sheetgen.figures.plot import Axis, Figure, Key, Layer, Note, Panel, Plot, Points
-from sheetgen.figures.scales import FINE_STEPS, snap_up, spread
+from sheetgen.figures.scales import FINE_STEPS, place, snap_up, spread
 from sheetgen.figures.stamp import stamp
 from sheetgen.figures.style import WIDTH
 from sheetgen.figures.words import number, unit_label
@@ -77,7 +77,7 @@ def rows(
     materials = list(dict.fromkeys(entry.slug for entry in entries))
     names = {entry.slug: entry.name for entry in entries}
     mixed = len({entry.value > 0 for entry in entries}) == 2
-    levels = {slug: len(materials) - 0.5 - place for place, slug in enumerate(materials)}
+    levels = {slug: len(materials) - 0.5 - rank for rank, slug in enumerate(materials)}
     layers: list[Layer] = list(behind)
     for look in dict.fromkeys(entry.look for entry in entries):
         layers.append(_markers([entry for entry in entries if entry.look == look], levels, look, mixed))
@@ -86,7 +86,7 @@ def rows(
         for slug, level in levels.items()
     ]
     layers += [
-        Note("opposite sign", axis.high, levels[slug], "end", dx=-3, dy=-2.3, ink="two")
+        opposite_sign([abs(entry.value) for entry in entries if entry.slug == slug], axis, levels[slug])
         for slug in dict.fromkeys(entry.slug for entry in entries if signed and entry.value < 0)
     ]
     tall = ROW * len(materials) + 4
@@ -100,6 +100,14 @@ def rows(
     )
     height = BOTTOM + tall + TOP + (LEGEND_ROW if keys else 0)
     return Plot(id, "handbook", title, description, (panel,), height)
+
+
+def opposite_sign(sizes: list[float], axis: Axis, level: float) -> Note:
+    """Says in a row of markers that a ratio is negative, at the end where there is more room."""
+    shares = place(axis, sizes, 0.0, 1.0)
+    left = shares.min() > 1 - shares.max()
+    end, anchor, shift = (axis.low, "start", 3) if left else (axis.high, "end", -3)
+    return Note("opposite sign", end, level, anchor, dx=shift, dy=-2.3, ink="two")
 
 
 def _markers(entries: list[Entry], levels: dict[str, float], look: str, mixed: bool) -> Points:

@@ -18,7 +18,8 @@ from sheetgen.figures import (
     resistivity,
     zone,
 )
-from sheetgen.figures.plot import Area, Curve, Points, Rule
+from sheetgen.figures.plot import Area, Axis, Curve, Points, Rule
+from sheetgen.figures.ranking import opposite_sign
 from sheetgen.physics import bloch_grueneisen, crystals, debye, drude, films, occupation, zones
 from sheetgen.physics import counting as counts
 
@@ -261,6 +262,14 @@ def test_every_ratio_is_a_marker_with_its_standing():
     drawn = sorted((round(x, 9), name) for name, layer in markers.items() for x in layer.x)
     stated = sorted((round(abs(one.ratio), 9), one.standing) for one in sheet.confrontations if one.ratio)
     assert drawn == stated
+
+
+def test_a_ratio_of_opposite_sign_says_so_beside_its_marker_and_in_the_table():
+    names = [name for layer in layers_of(confrontation, "copper", Points).values() for name in layer.names]
+    assert "thermopower ratio: fails, opposite sign" in names
+    axis = Axis("", 0.1, 10.0, "log")
+    assert opposite_sign([3.0], axis, 0.5).anchor == "start"
+    assert opposite_sign([0.3, 2.0], axis, 0.5).anchor == "end"
 
 
 def test_the_fermi_level_is_the_sheets():
