@@ -6,6 +6,8 @@ from typing import Any
 
 from markupsafe import Markup
 
+from sheetgen.standing import thresholds
+
 from . import citations, numbers
 
 
@@ -20,8 +22,24 @@ def methods(handbook: Any) -> dict[str, Any]:
     covered = {a.id: [registry.definitions_of(q)[0] for q in registry.resting_on(a.id)] for a in registry.assumptions}
     return {
         "sections": sections,
+        "titles": {assumption.id: assumption.title for assumption in registry.assumptions},
+        "standings": standing_rules(thresholds(handbook.imprint)),
         "assumptions": [(a, _bounds(a, handbook), covered[a.id]) for a in _each_once(registry)],
     }
+
+
+def standing_rules(bounds: Any) -> list[tuple[str, str]]:
+    """The standings in the order in which they are tried, each with its rule at the bounds of this handbook."""
+    off, wide, factor = (numbers.printed(bound).text for bound in (bounds.agrees, bounds.undecided, bounds.adjust))
+    least = numbers.printed(float(f"{1 / bounds.adjust:.3g}")).text
+    return [
+        ("outside", "an assumption that the number rests on is broken"),
+        ("unchecked", "nothing measured is at hand to hold the number against"),
+        ("agrees", f"the ratio lies within {off} of 1, or within twice its uncertainty where that is at most {wide}"),
+        ("undecided", "the ratio lies within twice its uncertainty of 1, but that uncertainty is larger"),
+        ("adjust", f"the ratio lies between {least} and {factor}: usable when multiplied by it"),
+        ("fails", "all else: the ratio lies further off, or has the other sign"),
+    ]
 
 
 def _each_once(registry: Any) -> list[Any]:

@@ -99,6 +99,7 @@ class SheetPage:
             "cautions": [
                 (caution, [(c, hazards.statement(c)) for c in caution.hazard]) for caution in self.record.cautions
             ],
+            "defers": any("design allowable" in caution.text for caution in self.record.cautions),
             "input_groups": self.input_groups(),
             "recalled": sum(bool(given.get("recalled")) for given in self.data["inputs"].values()),
             "optical": self.optical_bands(),
@@ -280,7 +281,6 @@ class SheetPage:
         groups: dict[tuple[str, str], list[Any]] = {}
         for check in self.sheet.checks:
             groups.setdefault((check.id, check.indicator), []).append(check)
-        order = list(words.CONDITIONS)
         declared = {
             (assumption.id, assumption.indicator): assumption for assumption in self.handbook.registry.assumptions
         }
@@ -289,7 +289,7 @@ class SheetPage:
                 "id": id,
                 "first": checks[0],
                 "formula": declared[id, indicator].formula if (id, indicator) in declared else "",
-                "standing": max((check.standing for check in checks), key=order.index),
+                "standing": max((check.standing for check in checks), key=words.CONDITIONS.index),
                 "evaluations": _each_once([self.evaluation(check) for check in checks]),
                 "covers": [
                     self.definitions[q] for q in checks[0].covers if q in self.definitions and self.sheet.entries(q)

@@ -11,19 +11,9 @@ from markupsafe import Markup
 from . import numbers
 
 # In the order in which a reader wants to see them.
-STANDINGS = {
-    "agrees": "the measured value agrees with the model",
-    "adjust": "usable with the stated factor, measured over model",
-    "undecided": "the uncertainty is too large to decide",
-    "fails": "the model is wrong by more than a factor of two, or in sign",
-    "outside": "an assumption that the number rests on is broken here",
-    "unchecked": "nothing measured is at hand to hold it against",
-}
-CONDITIONS = {
-    "holds": "within the first bound",
-    "strained": "beyond the first bound: read the number with care",
-    "broken": "beyond the second bound: the numbers that rest on it are outside the model",
-}
+STANDINGS = ("agrees", "adjust", "undecided", "fails", "outside", "unchecked")
+# From the best to the worst.
+CONDITIONS = ("holds", "strained", "broken")
 LATTICES = {
     "sc": "simple cubic",
     "bcc": "body-centred cubic",

@@ -12,6 +12,8 @@ from urllib.parse import unquote, urlsplit
 import pytest
 
 from sheetgen.pages import lay_out
+from sheetgen.pages.reference import standing_rules
+from sheetgen.standing import thresholds
 
 
 def test_the_pages_that_a_reader_expects_are_there(site, small_handbook):
@@ -148,3 +150,28 @@ def test_the_cells_of_each_row_fill_the_columns(site):
                 spans = [int(found[1]) if (found := re.search(r'colspan="(\d+)"', cell)) else 1 for cell in cells]
                 widths.add(sum(spans))
             assert len(widths) == 1, (path, widths, table[:200])
+
+
+def test_the_methods_state_the_rule_of_each_standing_in_the_order_of_trial(pages, small_handbook):
+    text = pages["methods.html"].text
+    order = ["outside", "unchecked", "agrees", "undecided", "adjust", "fails"]
+    places = [text.index(f"{word} {rule}") for word, rule in standing_rules(thresholds(small_handbook.imprint))]
+    assert [word for word, _ in standing_rules(thresholds(small_handbook.imprint))] == order
+    assert places == sorted(places)
+    assert "within 0.1 of 1" in text and "between 0.5 and 2" in text
+
+
+def test_the_limits_page_sorts_materials_by_the_plain_answer(site, small_handbook):
+    page = site["limits.html"].decode()
+    row = re.search(r'<tr><th scope="row"><a href="quantities/heat_coefficient.html">.*?</tr>', page, re.DOTALL)[0]
+    cells = re.findall(r"<td.*?>(.*?)</td>", row, re.DOTALL)
+    line = next(line for line in small_handbook["copper"].answer.scale if line.quantity == "heat_coefficient")
+    assert "Copper" in cells[1] and f"{line.factor:.2f}" in cells[1]
+    assert "Copper" not in cells[0] + cells[2]
+
+
+def test_a_ranking_goes_from_the_largest_to_the_smallest(site, small_handbook):
+    page = site["quantities/fermi_energy.html"].decode()
+    order = re.findall(r'<th scope="row"><a href="\.\./materials/([^"]+)\.html">', page)
+    values = {sheet.record.slug: sheet.si("fermi_energy") for sheet in small_handbook.sheets}
+    assert order == sorted(values, key=values.get, reverse=True)
