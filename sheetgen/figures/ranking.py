@@ -17,7 +17,7 @@ from sheetgen.figures.words import number, unit_label
 
 ROW = 9.0
 LABELS = 112.0
-LONGEST_NAME = 28
+LONGEST_NAME = 26
 NEARBY = 5.0  # kelvins within which a temperature counts as the reference one
 
 
