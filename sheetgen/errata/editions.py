@@ -106,7 +106,7 @@ def read_edition(path: Path, name: str) -> Edition:
     if size > MAXIMUM_BYTES:
         raise _fault(path, f"larger than {MAXIMUM_BYTES} bytes; expected the data of a handbook.")
     try:
-        data = json.loads(text)
+        data = json.loads(text.decode("utf-8"))
     except json.JSONDecodeError as error:
         raise _fault(path, f"no JSON ({error.msg.lower()}); publish it again.", error.lineno, error.colno) from error
     except (UnicodeDecodeError, RecursionError) as error:

@@ -67,6 +67,8 @@ def _rests_on(point: Point, old: Mapping[str, Any], new: Mapping[str, Any]) -> I
                     found[name] = None
                 else:
                     waiting.append(Point(name, None, here.axis, here.at, here.repeat))
+            if entry and not entry.get("depends_on"):  # it is read off the whole structure, which has no id of its own
+                found |= dict.fromkeys(id for id in material["inputs"] if id.startswith("structure."))
             found |= dict.fromkeys(id for id in entry.get("budget", ()) if id in material["inputs"])
     return iter(found)
 
