@@ -87,7 +87,8 @@ STRUCTURES = {
                                     "Zr1 0.2083 0.0395 0.2754\nO1 0.3447 0.3317 0.0700\nO2 0.4792 0.7569 0.4496"),
     "triclinic": cif("3 4 5 80 85 95", "_space_group_IT_number 2", "Bi1 0.1 0.2 0.3"),
     "operations-of-no-known-group": cif(
-        "4 4 4 90 90 90", "loop_\n_space_group_symop_operation_xyz\n'x,y,z'\n'-x+1/8,-y+1/8,-z+1/8'", "Po1 0.3 0.2 0.1"),
+        "4 4 4 90 90 90", "loop_\n_space_group_symop_operation_xyz\n'x,y,z'\n'-x+1/8,-y+1/8,-z+1/8'",
+        "Po1 0.3 0.2 0.1"),
     "operations": cif(
         "4 5 6 90 90 90", "loop_\n_symmetry_equiv_pos_as_xyz\nx,y,z\n-x,-y,z\nx,-y,-z\n-x,y,-z", "Ga1 0.1 0.2 0.3"),
     "disordered-brass": cif("2.95 2.95 2.95 90 90 90", "_space_group_IT_number 229", "", "").replace(
