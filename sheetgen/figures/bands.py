@@ -17,7 +17,7 @@ from sheetgen.physics import crystals, zones
 from sheetgen.quantities.structure import nominal_cell, structure_facts
 
 PER_NANOMETRE = 1e9
-SAMPLES = 320
+SAMPLES = 260
 MOST_BANDS = 120
 KEYS = (
     Key("empty-lattice bands", "line", "thin"),

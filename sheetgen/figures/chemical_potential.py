@@ -61,7 +61,7 @@ def plot(subject: Subject) -> Plot:
 
 def _occupations(subject: Subject, reach: float) -> tuple:
     level = subject.si("fermi_energy")
-    energy = np.linspace(max(-reach * MILLIELECTRONVOLT, -level), reach * MILLIELECTRONVOLT, 401)
+    energy = np.linspace(max(-reach * MILLIELECTRONVOLT, -level), reach * MILLIELECTRONVOLT, 241)
     layers: list = [
         Curve(
             kelvin(temperature),
@@ -80,7 +80,7 @@ def _occupations(subject: Subject, reach: float) -> tuple:
 @lru_cache(maxsize=4)
 def universal_potential(dimension: int, end: float) -> tuple:
     """µ/E_F over T/T_F, which every gas of one number of dimensions shares, and the series where there is one."""
-    share = np.linspace(0.0, end, 301)[1:]
+    share = np.linspace(0.0, end, 181)[1:]
     if dimension == 2:
         return (Curve("exact", share, chemical_potential_ratio_2d(share)),)
     low = np.linspace(0.0, SERIES_HOLDS_TO, 40)

@@ -14,7 +14,7 @@ from sheetgen.figures.words import number
 from sheetgen.physics import counting
 
 NANOMETRE = 1e-9
-EDGES = np.geomspace(1.0, 100.0, 241)
+EDGES = np.geomspace(1.0, 100.0, 181)
 LAST_PRODUCT = 20.0
 ONE_PERCENT = 0.01
 
@@ -45,7 +45,7 @@ def plot(subject: Subject) -> Plot:
 @lru_cache(maxsize=1)
 def universal_counts() -> tuple:
     """Wavevectors in a cube with k ≤ k_F, by k_F·L: exact counts as stairs, the continuum, and Weyl's terms."""
-    smooth = np.linspace(0.0, LAST_PRODUCT, 201)
+    smooth = np.linspace(0.0, LAST_PRODUCT, 101)
     volume, surface, edge = counting.weyl_terms(smooth / np.pi)
     return (
         Curve("continuum", smooth, volume, "ink"),

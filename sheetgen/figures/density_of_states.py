@@ -53,7 +53,7 @@ def density_of_states(subject: Subject, end: float) -> tuple[np.ndarray, np.ndar
     The states at an energy are those at the Fermi level of the same gas diluted until its level is that energy.
     """
     level, density = subject.si("fermi_energy"), subject.si(subject.density_name)
-    wavevectors = np.linspace(1e-3, 1.0, 600) * np.sqrt(end / level)
+    wavevectors = np.linspace(1e-3, 1.0, 360) * np.sqrt(end / level)
     given = {subject.density_name: density * wavevectors**subject.dimension}
     return subject.curve("fermi_energy", **given), subject.curve("density_of_states", **given)
 

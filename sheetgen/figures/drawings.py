@@ -10,7 +10,7 @@ from sheetgen.figures import style
 from sheetgen.figures.frames import text_element
 from sheetgen.figures.marks import bar_path, marker_path
 from sheetgen.figures.plot import Note, Panel, Points, Rule
-from sheetgen.figures.scales import place
+from sheetgen.figures.scales import place, place_one
 from sheetgen.figures.table import Series
 
 UNIT = style.UNITS_PER_POINT
@@ -73,7 +73,7 @@ def _draw_rule(panel: Panel, layer: Rule, number: int, height: float, series: li
     left, bottom, width, tall = panel.box
     upright = layer.x is not None
     axis, start, length = (panel.x, left, width) if upright else (panel.y, bottom, tall)
-    at = float(place(axis, layer.x if upright else layer.y, start, length))
+    at = place_one(axis, layer.x if upright else layer.y, start, length)
     if not start - 0.01 <= at <= start + length + 0.01:
         return ""
     if layer.name:
@@ -87,8 +87,8 @@ def _draw_rule(panel: Panel, layer: Rule, number: int, height: float, series: li
 
 def _draw_note(panel: Panel, layer: Note, number: int, height: float, series: list[Series]) -> str:
     left, bottom, width, tall = panel.box
-    x = float(place(panel.x, layer.x, left, width)) + layer.dx
-    y = height - float(place(panel.y, layer.y, bottom, tall)) - layer.dy
+    x = place_one(panel.x, layer.x, left, width) + layer.dx
+    y = height - place_one(panel.y, layer.y, bottom, tall) - layer.dy
     anchor = {"middle": "mi", "end": "en"}.get(layer.anchor, "")
     ink = "" if layer.ink == "ink" else f"t-{layer.ink}"
     text = text_element(x, y, layer.text, " ".join(filter(None, ("no", anchor, ink))))

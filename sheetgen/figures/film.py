@@ -111,7 +111,7 @@ def _curve(subject: Subject, scattering: Scattering) -> Curve:
 
 def _fermi_energies(subject: Subject, end: float) -> tuple:
     level = subject.si("fermi_energy")
-    thickness = np.linspace(0.5 * subject.si("fermi_wavelength"), end * NANOMETRE, 381)
+    thickness = np.linspace(0.5 * subject.si("fermi_wavelength"), end * NANOMETRE, 301)
     hard = subject.curve("film_fermi_energy", specimen_thickness=thickness) / level
     neutral = subject.curve("film_fermi_energy_neutral", specimen_thickness=thickness) / level
     return (

@@ -11,8 +11,8 @@ from sheetgen.figures.stamp import stamp
 from sheetgen.figures.subject import Subject, si_arrays
 from sheetgen.figures.words import number
 
-TEMPERATURES = np.geomspace(1.0, 1000.0, 151)
-SQUARES = np.linspace(0.0, 20.0, 61)
+TEMPERATURES = np.geomspace(1.0, 1000.0, 101)
+SQUARES = np.linspace(0.0, 20.0, 21)
 MILLI = 1e-3
 
 

@@ -26,7 +26,7 @@ def plot(subject: Subject) -> Plot:
     """Two panels over the same photon energies."""
     end = snap_up(1.3 * subject.si("plasma_energy") / c.e, FINE_STEPS)
     # Dense where the damping bends the curves, at the low end, and even elsewhere.
-    energies = np.union1d(np.linspace(end / 400, end, 240), np.geomspace(end / 4000, end / 10, 60))
+    energies = np.union1d(np.linspace(end / 400, end, 180), np.geomspace(end / 4000, end / 10, 40))
     height, upper, lower = stacked(80, 88, (2, 2), shared=True)
     x = Axis("*ħω* / eV", 0, end)
     above = Axis("", 0, end, blank=True, column=plain(x.label))

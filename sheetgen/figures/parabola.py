@@ -45,7 +45,7 @@ def plot(subject: Subject) -> Plot:
 
 
 def _parabola(subject: Subject, name: str, reach: float, joules: float, look: str) -> Curve:
-    wavevector = np.linspace(-reach, reach, 201)
+    wavevector = np.linspace(-reach, reach, 121)
     energies = subject.curve("fermi_energy", fermi_wavevector=wavevector / NANOMETRE)
     return Curve(name, wavevector, energies / joules, look)
 

@@ -12,7 +12,7 @@ from sheetgen.figures.subject import Subject, si_arrays
 from sheetgen.figures.words import kelvin, number
 
 MICROOHM_CENTIMETRE = 1e-8
-TEMPERATURES = np.geomspace(1.0, 1000.0, 181)
+TEMPERATURES = np.geomspace(1.0, 1000.0, 121)
 TEMPERATURE_AXIS = Axis("*T* / K", 1, 1000, "log")
 
 

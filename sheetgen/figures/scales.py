@@ -23,6 +23,13 @@ def place(axis: Axis, values, start: float, length: float) -> np.ndarray:
     return start + (values - low) * (length / (math.log(axis.high) - low))
 
 
+def place_one(axis: Axis, number: float, start: float, length: float) -> float:
+    """`place` of a single number, without the cost of an array."""
+    if axis.scale == "linear":
+        return start + (number - axis.low) * (length / (axis.high - axis.low))
+    return start + math.log(number / axis.low) * (length / math.log(axis.high / axis.low))
+
+
 def value(axis: Axis, places: np.ndarray, start: float, length: float) -> np.ndarray:
     """The inverse of `place`."""
     share = (places - start) / length

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import dataclass
 from functools import lru_cache
+from itertools import chain
 
 from sheetgen.figures.markup import plain
 from sheetgen.figures.plot import Panel
@@ -56,12 +57,14 @@ def _lines(one: Series, labels: list[str], columns: list[str]) -> list[str]:
         f"u({labels[1]})": one.y_uncertainty,
     }
     filled = [given.get(column) for column in columns]
+    numbers = [column for column in filled if column]
     pattern = "".join(",%.6g" if column else "," for column in filled)
-    rows = zip(*(column for column in filled if column), strict=True)
-    if one.names is None:
-        pattern = _quoted(one.name).replace("%", "%%") + pattern
-        return [pattern % row for row in rows]
-    return [_quoted(name) + pattern % row for name, row in zip(one.names, rows, strict=True)]
+    rows = list(zip(*numbers, strict=True))
+    if one.names is not None:
+        return [_quoted(name) + pattern % row for name, row in zip(one.names, rows, strict=True)]
+    # One format for all rows takes half the time of one for each.
+    pattern = _quoted(one.name).replace("%", "%%") + pattern
+    return ["\n".join([pattern] * len(rows)) % tuple(chain.from_iterable(rows))] if rows else []
 
 
 @lru_cache(maxsize=4096)
