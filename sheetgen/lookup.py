@@ -113,9 +113,10 @@ def find_number(sheet: Sheet, id: str, points: Mapping[str, float | None], speci
     for axis in ("edge", "photon_energy"):
         if points[axis] is not None and getattr(numbers[0], axis) is None:
             raise NotFoundError(f"{id} is not stated by {axis.replace('_', ' ')}; leave {axis} out.")
-    axis = next((axis for axis in AXES if getattr(numbers[0], axis) is not None), None)
-    if axis is None:
+    axes = [axis for axis in AXES if getattr(numbers[0], axis) is not None]
+    if not axes:
         return numbers[0]
+    axis = axes[0]
     point = points[axis]
     if point is None:
         if axis == "temperature" and (len(numbers) == 1 or _leads_with_reference(sheet, id)):
@@ -133,10 +134,10 @@ def column(sheets: Sequence[Sheet], id: str, unit: str, what: str, points: Mappi
     if what not in _FIELDS:
         raise ValueError(f"what={what!r}; expected one of {', '.join(_FIELDS)}")
     found = [_number_or_none(sheet, id, points) for sheet in sheets]
-    if what == "standing":
-        return np.array(["" if number is None else number.standing for number in found], dtype=object)
     # In two dimensions some quantities are per area: those do not belong into a column that is per volume.
-    fitting = [number if number is None or dimension_matches(number.unit, unit) else None for number in found]
+    fitting = [None if number is None or not dimension_matches(number.unit, unit) else number for number in found]
+    if what == "standing":
+        return np.array(["" if number is None else number.standing for number in fitting], dtype=object)
     values = [None if number is None else getattr(number.in_unit(unit), what) for number in fitting]
     return np.array([math.nan if value is None else value for value in values], dtype=float)
 

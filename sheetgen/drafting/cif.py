@@ -90,7 +90,7 @@ def read_deposit(path: Path) -> Deposit:
 # ---------------------------------------------------------------- the block and its crystal
 
 
-def _block(text: str, path: Path) -> tuple[gemmi.cif.Document | None, gemmi.cif.Block | None]:
+def _block(text: str, path: Path) -> tuple[gemmi.cif.Document, gemmi.cif.Block]:
     """The document and its one block with a cell."""
     from gemmi import cif
 
@@ -196,7 +196,7 @@ def _sites(block: gemmi.cif.Block, crystal: Crystal) -> Iterator[AtomSite]:
     columns = ["label", "?type_symbol", "fract_x", "fract_y", "fract_z", "?occupancy"]
     for row in block.find("_atom_site_", columns):
         symbol = row.str(1) if row.has(1) and row.str(1) not in "?." else row.str(0)
-        letters = re.match(r"[A-Za-z]{0,2}", symbol)[0].capitalize()
+        letters = "".join(re.findall(r"^[A-Za-z]{1,2}", symbol)).capitalize()
         element = letters if letters in elements else letters[:1]
         occupancy = row.str(5) if row.has(5) and row.str(5) not in "?." else ""
         position = (row.str(2), row.str(3), row.str(4))
