@@ -34,6 +34,11 @@ def citation(key: str, sources: dict[str, Any]) -> Citation:
     return Citation(key, _label(source.authors, source.year, source.title) or key, True)
 
 
+def citations(keys: Iterable[str], sources: dict[str, Any]) -> tuple[Citation, ...]:
+    """Short forms of several sources."""
+    return tuple(citation(key, sources) for key in keys)
+
+
 @cache
 def _label(authors: tuple[str, ...], year: str, title: str) -> str:
     names = [_family(author) for author in authors]

@@ -12,6 +12,7 @@ from markupsafe import Markup
 
 from . import citations, entries, hazards, metadata, numbers, words
 from .entries import Cell, Line
+from .evidence import Evidence
 
 KEY_NUMBERS = (
     "electron_density", "sheet_density", "electron_sphere_radius", "fermi_energy", "fermi_wavevector", "fermi_velocity",
@@ -83,6 +84,7 @@ class SheetPage:
         self.preference = entries.Preference(handbook.imprint.units)
         self.specimen_names = tuple(specimen.name for specimen in self.record.specimens)
         self.definitions = _fitting(handbook.registry, self.record.electrons.dimension)
+        self.evidence = Evidence(sheet, handbook, self.definitions, self.preference)
 
     def context(self) -> dict[str, Any]:
         """The names that the template uses."""
@@ -106,8 +108,8 @@ class SheetPage:
             "optical_sources": self.optical_sources(),
             "written": _written,
             "sections": list(self.sections()),
-            "confrontations": self.confrontations(),
-            "checks": self.check_groups(),
+            "confrontations": self.evidence.confrontations(),
+            "checks": self.evidence.check_groups(),
             "specimens": self.specimens(),
             "figures": [(figure, figure_size(figure.svg)) for figure in self.figures],
             "missing": self.missing(self.sheet.missing),
@@ -171,7 +173,7 @@ class SheetPage:
 
     def cite(self, keys: Iterable[str]) -> tuple[citations.Citation, ...]:
         """Short citations of some sources."""
-        return tuple(citations.citation(key, self.handbook.sources) for key in keys)
+        return citations.citations(keys, self.handbook.sources)
 
     # --- numbers
 
@@ -238,77 +240,7 @@ class SheetPage:
         unit = numbers.unit(self.preference.of(definition.id, present[0]["unit"]))
         return Row(definition.id, definition.symbol, definition.title, power, unit, printed, anchored)
 
-    # --- standing
-
-    def confrontations(self) -> list[dict[str, Any]]:
-        """Model against measurement by quantity; what the ratio means and the sources stand once under their rows."""
-        groups: dict[str, list[Any]] = {}
-        for found in self.sheet.confrontations:
-            groups.setdefault(found.quantity, []).append(found)
-        return [
-            {
-                "first": found[0],
-                "rows": [self.comparison(one) for one in found],
-                "remarks": list(dict.fromkeys(one.meaning for one in found if one.meaning)),
-                "recalled": any(one.recalled for one in found),
-                "sources": self.cite(dict.fromkeys(key for one in found for key in one.sources)),
-            }
-            for found in groups.values()
-        ]
-
-    def comparison(self, found: Any) -> dict[str, Any]:
-        """One measurement beside the model, each number printed; a reason that only names the ratio is left out."""
-        return {
-            "at": entries.where(found),
-            "model": self.compared(found, found.model, found.model_uncertainty),
-            "measured": self.compared(found, found.measured, found.measured_uncertainty),
-            "unit": numbers.unit(self.preference.of(found.quantity, found.unit)),
-            "ratio": None if found.ratio is None else _ratio(found.ratio, found.ratio_uncertainty),
-            "standing": found.standing,
-            "reason": found.reason if found.reason != found.ratio_name else "",
-        }
-
-    def compared(self, found: Any, value: float | None, uncertainty: float | None) -> Markup | None:
-        """One side of a confrontation, from SI to the unit on the page."""
-        if value is None:
-            return None
-        unit = self.preference.of(found.quantity, found.unit)
-        factor = numbers.si_factor(unit)
-        return numbers.printed(value / factor, uncertainty / factor if uncertainty else None).html
-
-    def check_groups(self) -> list[dict[str, Any]]:
-        """The assumptions with all their evaluations; the standing of a group is its worst."""
-        groups: dict[tuple[str, str], list[Any]] = {}
-        for check in self.sheet.checks:
-            groups.setdefault((check.id, check.indicator), []).append(check)
-        declared = {
-            (assumption.id, assumption.indicator): assumption for assumption in self.handbook.registry.assumptions
-        }
-        return [
-            {
-                "id": id,
-                "first": checks[0],
-                "formula": declared[id, indicator].formula if (id, indicator) in declared else "",
-                "standing": max((check.standing for check in checks), key=words.CONDITIONS.index),
-                "evaluations": _each_once([self.evaluation(check) for check in checks]),
-                "covers": [
-                    self.definitions[q] for q in checks[0].covers if q in self.definitions and self.sheet.entries(q)
-                ],
-            }
-            for (id, indicator), checks in groups.items()
-        ]
-
-    def evaluation(self, check: Any) -> dict[str, Any]:
-        """One evaluation of an assumption, printed: three digits are enough to see how it stands."""
-        where = entries.where({check.axis: check.at}) if check.axis else Markup("")
-        own = self.definitions.get(check.quantity)
-        return {
-            "at": where,
-            "own": own.title if own and where else "",
-            "value": _three_digits(check.value),
-            "bound": None if check.bound is None else numbers.printed(check.bound).html,
-            "standing": check.standing,
-        }
+    # --- specimens, absences, sources
 
     def specimens(self) -> list[dict[str, Any]]:
         """The group's own specimens with what was stated of them and what follows."""
@@ -355,11 +287,6 @@ class SheetPage:
         return [source for key, source in self.handbook.sources.items() if key in keys]
 
 
-def _each_once(evaluations: list[dict[str, Any]]) -> list[dict[str, Any]]:
-    """Evaluations without repeats, as where a measurement was taken at a tabulated photon energy."""
-    return list({tuple(one.values()): one for one in evaluations}.values())
-
-
 def origins(lines: Sequence[Line]) -> str:
     """Where the uncertainties of some lines come from, in one sentence: what most share, then the exceptions."""
     by_origin: dict[str, list[str]] = {}
@@ -391,14 +318,6 @@ def _conditions(heads: Sequence[Markup]) -> tuple[tuple[Markup, int], ...]:
         seen[head] = seen.get(head, 0) + 1
         found.append((head, seen[head]))
     return tuple(found)
-
-
-def _ratio(ratio: float, uncertainty: float | None) -> Markup:
-    return numbers.printed(ratio, uncertainty).html if uncertainty else _three_digits(ratio)
-
-
-def _three_digits(value: float) -> Markup:
-    return numbers.printed(float(f"{value:.3g}")).html
 
 
 def _written(value: Any) -> Markup:

@@ -18,7 +18,7 @@ licence: CC-BY-4.0
 language: en-GB
 contact: handbook@marrow-point.example
 paper: letter
-units: {fermi_velocity: km/s}
+units: {fermi_velocity: km/s, electron_thermal_conductivity: W/(cm K), hall_coefficient: mm^3/C}
 """
 
 SOURCES = r"""
@@ -44,6 +44,8 @@ measured:
     - {value: 1.678(9) µΩ cm, at: 293 K, from: resistance1979}
     - {value: 0.215(8) µΩ cm, at: 80 K, from: resistance1979, recalled: true, note: quoted from memory}
   heat coefficient: {value: 0.695(10) mJ/(mol K²), from: [resistance1979, evil]}
+  thermal conductivity: {value: 401(4) W/(m K), at: 293 K, from: resistance1979}
+  hall coefficient: {value: -5.4(4)e-11 m³/C, at: 293 K, from: resistance1979}
   debye temperature: {value: 343 K, from: resistance1979}
   work function: {value: 4.65(13) eV, from: resistance1979}
   interband threshold: {value: 2.1 eV, from: resistance1979}

@@ -89,3 +89,10 @@ def test_a_measurement_stands_beside_the_model_with_ratio_and_meaning(copper, sm
     confrontation = next(c for c in small_handbook["copper"].confrontations if c.quantity == "heat_coefficient")
     assert re.search(r"0\.50\d+\(\d\d\)\s*0\.695\(10\)", copper.text)
     assert confrontation.meaning in copper.text.replace("Electrons at", "electrons at")
+
+
+def test_both_sides_of_a_comparison_stand_in_the_unit_of_the_page(copper):
+    text = copper.text.replace("\u202f", " ").replace("−", "-")
+    assert re.search(r"Hall coefficient\s*293 K\s*-0\.0737\d+\(\d+\)\s*-0\.0540\(40\)\s*mm3 C-1", text)
+    # Heat conduction is compared as a Lorenz number, which has no preferred unit here.
+    assert re.search(r"2\.443\d* × 10-8\s*2\.29\d+\(\d+\) × 10-8\s*W Ω K-2", text)
