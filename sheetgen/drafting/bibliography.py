@@ -139,8 +139,13 @@ def _numbered(base: str) -> Iterator[str]:
 def _surname(author: str) -> str:
     if "," in author:
         return author.partition(",")[0]
-    words = author.split()
-    return words[-1] if words else ""
+    # "A. Smith", or as some databases have it "Smith A": initials are no surname.
+    words = [word for word in author.split() if len(_plain(word)) > 2] or author.split()
+    return words[0 if author.startswith(words[0]) and _initials(author.split()[-1]) else -1] if words else ""
+
+
+def _initials(word: str) -> bool:
+    return len(_plain(word)) <= 2 or word.endswith(".")
 
 
 def _plain(text: str) -> str:

@@ -258,4 +258,5 @@ def _text(block: gemmi.cif.Block, tag: str) -> str:
 
     values = block.find_values(tag)
     raw = block.find_value(tag) or (values[0] if len(values) else None)
-    return "" if raw in (None, "?", ".") else plain_text(cif.as_string(raw))
+    text = "" if raw is None else plain_text(cif.as_string(raw))
+    return "" if text in ("?", ".") else text

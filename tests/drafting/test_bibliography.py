@@ -66,6 +66,15 @@ def test_another_publication_of_the_same_year_gets_a_letter():
     assert list(read(entry("muller1999", MEASURED) + other.addition)) == ["muller1999", "muller1999a"]
 
 
+@pytest.mark.parametrize(
+    "author, key",
+    [("Smith, J. A.", "smith"), ("J. A. Smith", "smith"), ("Smith J A", "smith"), ("Smith R. W", "smith"),
+     ("Li X", "li"), ("van der Berg, A.", "vanderberg"), ("Müller", "muller"), ("李, 明", "fallback")],
+)  # fmt: skip
+def test_the_key_is_the_surname(author, key):
+    assert cite(Publication((author,), "Title"), {}, "fallback").key == key
+
+
 def test_a_doi_that_is_none_is_left_out():
     assert "doi" not in entry("x", Publication(title="T", doi="see text"))
 

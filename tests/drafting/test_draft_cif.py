@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 import re
+from pathlib import Path
 
+import ase
 import pytest
 from ase.io import read as read_with_ase
 from hypothesis import HealthCheck, given, settings
@@ -235,6 +237,25 @@ def test_a_dictionary_of_citations_gives_the_primary_one(folder, given_file):
     text = COPPER.replace("_space_group_IT_number 225", f"_space_group_IT_number 225\n{citation}")
     assert draft_cif(given_file(text), folder).source.key == "smith2003"
     assert read_folder(folder).sources["smith2003"].authors == ("J. Smith", "K. Jones")
+
+
+# Entries of the Crystallography Open Database, which ASE carries for its own tests.
+DEPOSITS = sorted((Path(ase.__file__).parent / "test/testdata/minerals").glob("*.cif"))
+
+
+@pytest.mark.parametrize("path", DEPOSITS, ids=lambda path: path.stem)
+def test_real_deposits_are_drafted_with_their_publications(folder, path):
+    drafted = draft_cif(path, folder)
+    read = read_folder(folder)
+    atoms = read_with_ase(path, format="cif")
+    source = read.sources[drafted.source.key]
+    assert source.authors and source.fields["journal"] and re.fullmatch(r"(19|20)\d\d", source.year)
+    assert path.stem.removeprefix("cod_") in source.note
+    assert Handbook.load(folder).sheets[0].number("cell_volume").value == pytest.approx(atoms.get_volume(), rel=1e-4)
+
+
+def test_there_are_real_deposits():
+    assert len(DEPOSITS) >= 5
 
 
 # ---------------------------------------------------------------- files that are not fit
