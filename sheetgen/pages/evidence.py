@@ -16,7 +16,7 @@ class Evidence:
         self.sheet, self.handbook, self.definitions, self.preference = sheet, handbook, definitions, preference
 
     def confrontations(self) -> list[dict[str, Any]]:
-        """Model against measurement by quantity; what the ratio means and the sources stand once under their rows."""
+        """Model against measurement by quantity; what a deviation means and the sources stand once under their rows."""
         groups: dict[str, list[Any]] = {}
         for found in self.sheet.confrontations:
             groups.setdefault(found.quantity, []).append(found)
@@ -24,7 +24,9 @@ class Evidence:
             {
                 "first": found[0],
                 "rows": [self.comparison(one) for one in found],
-                "remarks": list(dict.fromkeys(one.meaning for one in found if one.meaning)),
+                "remarks": list(
+                    dict.fromkeys(one.meaning for one in found if one.standing != "agrees" and one.meaning)
+                ),
                 "recalled": any(one.recalled for one in found),
                 "sources": citations.citations(
                     dict.fromkeys(k for one in found for k in one.sources), self.handbook.sources
@@ -81,11 +83,10 @@ class Evidence:
 
     def evaluation(self, check: Any) -> dict[str, Any]:
         """One evaluation of an assumption, printed: three digits are enough to see how it stands."""
-        where = entries.where({check.axis: check.at}) if check.axis else Markup("")
         own = self.definitions.get(check.quantity)
         return {
-            "at": where,
-            "own": own.title if own and where else "",
+            # A photon energy that is a number of the sheet is named, any other is stated.
+            "at": words.lower_first(own.title) if own else entries.where({check.axis: check.at}) if check.axis else "",
             "value": _three_digits(check.value),
             "bound": None if check.bound is None else numbers.printed(check.bound).html,
             "standing": check.standing,
