@@ -66,7 +66,11 @@ class Workshop:
         except FaultsError as error:
             self._publish_news(error.faults, None)
         except (MachineError, FolderRefusedError, OSError, MemoryError) as error:
-            self._publish_news((Fault(Place(str(self.folder)), str(error)),), None)
+            said = error.strerror.lower() if isinstance(error, OSError) and error.strerror else str(error)
+            self._publish_news((Fault(Place(str(self.folder)), said),), None)
+        except Exception as error:  # the galley outlives an error of the program, and shows it
+            said = f"the program itself is at fault ({type(error).__name__}: {error}); `sheetgen proof` says more"
+            self._publish_news((Fault(Place(str(self.folder)), said),), None)
         else:
             self._publish_news((), pressed.report)
 
