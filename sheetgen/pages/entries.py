@@ -103,7 +103,7 @@ def _at(value: float, unit: str) -> Markup:
 
 
 def where(item: Any) -> Markup:
-    """What an entry, a confrontation or a check was taken at: '293.15 K', '1.96 eV', '5 nm', 'F-12' or 'F-12, 293 K'."""
+    """What an entry, a confrontation or a check was taken at: '293.15 K', '1.96 eV', '5 nm' or 'F-12, 293 K'."""
     get = item.get if isinstance(item, dict) else lambda name: getattr(item, name, None)
     parts = [Markup.escape(specimen)] if (specimen := get("specimen")) else []
     for axis, unit in (("temperature", "K"), ("photon_energy", "eV"), ("edge", "nm")):
