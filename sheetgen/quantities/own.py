@@ -10,7 +10,7 @@ import traceback
 import types
 import warnings
 from collections.abc import Callable, Iterable, Iterator
-from dataclasses import replace
+from dataclasses import fields, replace
 from pathlib import Path
 from typing import Any
 
@@ -37,9 +37,9 @@ _AXIS_INPUTS = {
     "photon_energy": {"photon_energy"},
 }
 _TEXTS = ("id", "title", "symbol", "unit", "formula", "source", "section")
-_FURTHER = (
-    "dimensions, assumes, listed_by, needs, absent, comparison, scope, in_specimens, forms, carries_uncertainty, drawn"
-)
+# What the decorator itself fills in, or an own quantity has no use for.
+_NOT_STATED = {"title", "note", "function", "parameters", "place", "published", "form"}
+_FIELDS = tuple(field.name for field in fields(Definition) if field.name not in _NOT_STATED)
 _WRONG_WORD = re.compile(r"got an unexpected keyword argument '(\w+)'")
 
 
@@ -131,9 +131,8 @@ def _what(error: BaseException) -> str:
     if isinstance(error, ModuleNotFoundError):
         return f"there is no library '{error.name}'; install it where sheetgen runs, or do without it."
     if wrong := _WRONG_WORD.search(str(error)):
-        fields = [*_TEXTS, *_FURTHER.split(", ")]
-        guess = did_you_mean(wrong[1], fields)
-        return f"a quantity has no '{wrong[1]}'; expected one of {', '.join(fields)}.{guess}"
+        guess = did_you_mean(wrong[1], _FIELDS)
+        return f"a quantity has no '{wrong[1]}'; expected one of {', '.join(_FIELDS)}.{guess}"
     if "required keyword-only argument" in str(error):
         missing = str(error).partition(":")[2].strip()
         return f"a quantity is declared without {missing}; add what is missing."
