@@ -12,7 +12,7 @@ from tempfile import TemporaryDirectory
 from typing import TYPE_CHECKING
 
 from sheetgen.drafting.bibliography import Publication
-from sheetgen.drafting.cif_text import plain_text
+from sheetgen.drafting.publication import first_text, publication_of, text_of
 from sheetgen.faults import Fault, FaultLog, FaultsError, Place
 from sheetgen.records import Crystal
 from sheetgen.records.cif import MAXIMUM_BYTES, read_cif
@@ -34,12 +34,6 @@ _GROUPS = (
     "_symmetry_space_group_name_Hall", "_space_group_IT_number", "_symmetry_Int_Tables_number",
 )  # fmt: skip
 _NAMES = ("_chemical_name_common", "_chemical_name_mineral", "_chemical_name_systematic")
-_DATABASES = {
-    "_cod_database_code": "Crystallography Open Database",
-    "_database_code_ICSD": "Inorganic Crystal Structure Database",
-    "_database_code_amcsd": "American Mineralogist Crystal Structure Database",
-    "_database_code_CSD": "Cambridge Structural Database",
-}
 _LONGEST_NAME = 60
 # In a formula the elements that take electrons come last, the ones that take them most eagerly at the very end.
 _LATE = ("B", "Si", "C", "Sb", "As", "P", "N", "H", "Te", "Se", "S", "I", "Br", "Cl", "O", "F")
@@ -80,10 +74,10 @@ def read_deposit(path: Path) -> Deposit:
         text=text or "",
         crystal=crystal,
         formula=_formula(content),
-        name=_first(block, _NAMES)[:_LONGEST_NAME].strip(),
+        name=first_text(block, _NAMES)[:_LONGEST_NAME].strip(),
         space_group=_space_group(block),
         sites=tuple(_sites(block, crystal)),
-        publication=_publication(document, block),
+        publication=publication_of(document, block),
     )
 
 
@@ -184,8 +178,8 @@ def _space_group(block: gemmi.cif.Block) -> str:
             operations = gemmi.GroupOps([gemmi.Op(cif.as_string(raw)) for raw in listed])
             group = gemmi.find_spacegroup_by_ops(operations)
         else:
-            hexagonal = _text(block, "_cell_angle_gamma").startswith("120")
-            group = find_space_group(_first(block, _GROUPS), rhombohedral_axes=not hexagonal)
+            hexagonal = text_of(block, "_cell_angle_gamma").startswith("120")
+            group = find_space_group(first_text(block, _GROUPS), rhombohedral_axes=not hexagonal)
     except (ValueError, RuntimeError, UnreadableError):
         return ""
     return group.xhm() if group else ""
@@ -205,58 +199,3 @@ def _sites(block: gemmi.cif.Block, crystal: Crystal) -> Iterator[AtomSite]:
 
 def _is_one(occupancy: str) -> bool:
     return bool(re.fullmatch(r"\+?1(\.0*)?", occupancy))
-
-
-# ---------------------------------------------------------------- publication
-
-
-def _publication(document: gemmi.cif.Document, block: gemmi.cif.Block) -> Publication:
-    """What the block of the structure says of its publication, or else a block beside it, as journals write them."""
-    blocks = [block, *(other for other in document if other.name != block.name)]
-    for one in blocks:
-        found = _publication_of(one)
-        if found.title or found.journal or found.doi:
-            return found
-    return next((found for one in blocks if (found := _publication_of(one))), Publication())
-
-
-def _publication_of(block: gemmi.cif.Block) -> Publication:
-    first, last = (_first(block, (f"_journal_page_{end}", f"_citation_page_{end}")) for end in ("first", "last"))
-    codes = [f"{name} {code}" for tag, name in _DATABASES.items() if (code := _text(block, tag))]
-    return Publication(
-        authors=tuple(_authors(block)),
-        title=_first(block, ("_publ_section_title", "_citation_title")),
-        journal=_first(block, ("_journal_name_full", "_citation_journal_full", "_citation_journal_abbrev")),
-        volume=_first(block, ("_journal_volume", "_citation_journal_volume")),
-        number=_first(block, ("_journal_issue", "_citation_journal_issue")),
-        pages=f"{first}--{last}" if first and last and first != last else first or last,
-        year=_first(block, ("_journal_year", "_citation_year")),
-        doi=_first(block, ("_journal_paper_doi", "_journal_DOI", "_citation_doi")),
-        note=", ".join(codes),
-    )
-
-
-def _authors(block: gemmi.cif.Block) -> list[str]:
-    from gemmi import cif
-
-    names = [plain_text(cif.as_string(raw)) for raw in block.find_values("_publ_author_name")]
-    if not names:
-        wanted = _text(block, "_citation_author_citation_id")
-        for row in block.find("_citation_author_", ["name", "?citation_id"]):
-            if not row.has(1) or row.str(1) == wanted:
-                names.append(plain_text(row.str(0)))
-    return [name for name in names if name not in ("", "?", ".")]
-
-
-def _first(block: gemmi.cif.Block, tags: tuple[str, ...]) -> str:
-    return next((text for tag in tags if (text := _text(block, tag))), "")
-
-
-def _text(block: gemmi.cif.Block, tag: str) -> str:
-    """The value of a tag in plain Unicode, the first where it is looped; "" where it is absent or unknown."""
-    from gemmi import cif
-
-    values = block.find_values(tag)
-    raw = block.find_value(tag) or (values[0] if len(values) else None)
-    text = "" if raw is None else plain_text(cif.as_string(raw))
-    return "" if text in ("?", ".") else text

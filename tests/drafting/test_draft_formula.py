@@ -121,10 +121,10 @@ def test_a_failure_takes_back_what_was_new(folder, monkeypatch):
             raise OSError(28, "No space left on device", str(path))
         return original(path, text, undo)
 
-    from sheetgen.drafting import draft
+    from sheetgen.drafting import placing
 
-    original = draft._create
-    monkeypatch.setattr(draft, "_create", full)
+    original = placing._create
+    monkeypatch.setattr(placing, "_create", full)
     with pytest.raises(MachineError, match="No space left"):
         draft_formula("Cu", folder)
     assert not list(folder.iterdir())
