@@ -43,3 +43,4 @@ def test_entries_of_a_list_are_told_apart(tmp_path):
     assert [line.where for line in lines] == ["3 eV, 6 eV"]
     (used,) = answer(tmp_path).use
     assert used.where == "293.15 K"
+    assert used.reason == "measured 4.7 % above the model"
