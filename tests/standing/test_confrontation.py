@@ -132,6 +132,7 @@ specimens:
   - {name: F-3, form: film, thickness: 40 nm, specularity: 0.2,
      resistivity: {value: 0.9(1) µΩ cm, at: 150 K}, invented: true}
   - {name: P-1, form: particle, diameter: 3 nm, invented: true}
+  - {name: C-1, form: cube, edge: 0.3 nm, invented: true}
 """
 
 
@@ -155,6 +156,10 @@ def test_only_what_fits_the_form_of_a_specimen_is_stated(tmp_path):
     assert particle["level_spacing"]["value"] == pytest.approx(
         2e3 / (volume * sheet.entries("density_of_states")[0]["value"]), rel=1e-12
     )
+    cube = sheet.data["specimens"][4]["quantities"]
+    assert set(cube) == {"level_spacing", "states_hard_wall", "states_periodic", "hard_wall_deficit"}
+    # The lowest level of hard walls needs k_F·L ≥ π√3 = 5.4, and there k_F·L = 4.1: none fits, and 0 is a value.
+    assert (cube["states_hard_wall"]["value"], cube["hard_wall_deficit"]["value"]) == (0, 1)
     ids = {(entry["id"], entry.get("specimen")) for entry in sheet.data["assumptions"]}
     assert ("continuum", "P-1") in ids and ("bulk", "F-1") in ids
 
