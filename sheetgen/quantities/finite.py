@@ -10,8 +10,8 @@ declarations = Declarations()
 quantity, step = declarations.quantity, declarations.step
 FLAT = ("flat_potential",)
 FINITE = {"section": "Finite specimens"}
-CUBES = dict(listed_by="edge", in_specimens=True, **FINITE)
-COUNTS = dict(carries_uncertainty=False, **CUBES)
+CUBES = {"listed_by": "edge", "in_specimens": True, "forms": ("cube",), **FINITE}
+COUNTS = {"carries_uncertainty": False, **CUBES}
 FILM = {"section": "Specimens", "scope": "specimen", "forms": ("film",), "assumes": FLAT + ("bulk",)}
 FILM_PATH = {
     "section": "Specimens",
