@@ -5,6 +5,7 @@ As a library: `from sheetgen import Handbook`, then `Handbook.load("materials")`
 
 TYPE_CHECKING = False  # what type checkers take for true; importing typing would cost more than this whole file
 if TYPE_CHECKING:
+    from sheetgen.faults import FaultsError as FaultsError
     from sheetgen.handbook import Handbook as Handbook
     from sheetgen.lookup import NotDerivedError as NotDerivedError
     from sheetgen.lookup import NotFoundError as NotFoundError
@@ -12,8 +13,14 @@ if TYPE_CHECKING:
 
 __version__ = "0.1.0"
 
-_MODULES = {"Handbook": "handbook", "StatedNumber": "lookup", "NotFoundError": "lookup", "NotDerivedError": "lookup"}
-__all__ = ["Handbook", "NotDerivedError", "NotFoundError", "StatedNumber", "__version__"]
+_MODULES = {
+    "FaultsError": "faults",
+    "Handbook": "handbook",
+    "NotDerivedError": "lookup",
+    "NotFoundError": "lookup",
+    "StatedNumber": "lookup",
+}
+__all__ = ["FaultsError", "Handbook", "NotDerivedError", "NotFoundError", "StatedNumber", "__version__"]
 
 
 def __getattr__(name: str) -> object:

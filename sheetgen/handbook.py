@@ -73,6 +73,9 @@ class Handbook:
             guess = did_you_mean(str(slug), self._by_slug)
             raise NotFoundError(f"The handbook has no material '{slug}'.{guess}") from None
 
+    def __repr__(self) -> str:
+        return f"<Handbook {self.imprint.title!r} of {len(self)} sheets>"
+
     def __iter__(self) -> Iterator[Sheet]:
         return iter(self.sheets)
 

@@ -256,6 +256,9 @@ class Sheet:
             Subject(self.record, material.imprint, self.confrontations, self.si("nearest_neighbour_distance"))
         )
 
+    def __repr__(self) -> str:
+        return f"<Sheet {self.record.slug!r}>"
+
     def number(
         self,
         id: str,

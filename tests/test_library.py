@@ -12,7 +12,7 @@ import numpy as np
 import pytest
 
 import sheetgen
-from sheetgen import Handbook, NotDerivedError, NotFoundError, StatedNumber
+from sheetgen import FaultsError, Handbook, NotDerivedError, NotFoundError, StatedNumber
 
 DOCUMENT = Path(__file__).parents[1] / "docs" / "as-a-library.md"
 
@@ -45,6 +45,14 @@ def test_importing_the_package_costs_nothing_and_offers_its_names():
 def test_a_name_that_is_not_there_is_an_attribute_error():
     with pytest.raises(AttributeError, match="module 'sheetgen' has no attribute 'Handbok'"):
         sheetgen.Handbok  # noqa: B018
+
+
+def test_faults_of_the_folder_are_told_together(small_handbook):
+    (small_handbook / "copper.yaml").write_text("name: Copper\nformla: Cu\n", encoding="utf-8")
+    with pytest.raises(FaultsError) as caught:
+        Handbook.load(small_handbook)
+    assert len(caught.value.faults) == len(str(caught.value).splitlines()) >= 2
+    assert {Path(fault.place.file).name for fault in caught.value.faults} == {"copper.yaml"}
 
 
 def test_the_package_is_typed():
@@ -168,6 +176,7 @@ def test_without_a_reference_resistivity_a_temperature_is_asked_for(small_handbo
 
 
 def test_a_handbook_is_a_collection_of_sheets(small):
+    assert repr(small) == "<Handbook 'Two Metals' of 2 sheets>"
     assert small.slugs == ("copper", "sodium")
     assert [sheet.record.slug for sheet in small] == ["copper", "sodium"]
     assert (len(small), "copper" in small, "lead" in small) == (2, True, False)
