@@ -3,11 +3,14 @@
 from __future__ import annotations
 
 import os
+from collections.abc import Iterator
 from pathlib import Path
 
 import pytest
 from filelock import FileLock
+from support.browsing import FLAGS
 from support.folders import write_small_handbook
+from support.tools import required_tool
 
 ROOT = Path(__file__).parent.parent
 
@@ -38,6 +41,18 @@ def pressed_site(tmp_path_factory) -> Path:
         if not site.exists():
             press(ROOT / "materials", site)
     return site
+
+
+@pytest.fixture(scope="session")
+def browser() -> Iterator:
+    """A headless Chromium that cannot reach anything outside: one for all tests of a process, which allows no two."""
+    chromium = required_tool("chromium", "chromium-browser", "google-chrome")
+    from playwright.sync_api import sync_playwright
+
+    with sync_playwright() as playwright:
+        running = playwright.chromium.launch(executable_path=chromium, args=FLAGS)
+        yield running
+        running.close()
 
 
 @pytest.fixture

@@ -1,4 +1,4 @@
-"""A headless Chromium that cannot reach anything outside, and a server of the published site."""
+"""A server of the published site."""
 
 from __future__ import annotations
 
@@ -9,20 +9,6 @@ from http.server import SimpleHTTPRequestHandler, ThreadingHTTPServer
 from pathlib import Path
 
 import pytest
-from support.browsing import FLAGS
-from support.tools import required_tool
-
-
-@pytest.fixture(scope="session")
-def browser() -> Iterator:
-    """One browser for all tests of a worker."""
-    chromium = required_tool("chromium", "chromium-browser", "google-chrome")
-    from playwright.sync_api import sync_playwright
-
-    with sync_playwright() as playwright:
-        running = playwright.chromium.launch(executable_path=chromium, args=FLAGS)
-        yield running
-        running.close()
 
 
 class _Silent(SimpleHTTPRequestHandler):

@@ -10,8 +10,6 @@ import numpy as np
 import pytest
 from figures import afresh, sample
 from PIL import Image
-from support.browsing import FLAGS
-from support.tools import required_tool
 
 from sheetgen.figures.plot import Note, Points
 from sheetgen.figures.stamp import stamp
@@ -68,26 +66,19 @@ def test_every_computed_point_lies_on_the_stamped_curve(module, slug):
             assert distances(points, stamped[name]).max() <= NEAR
 
 
-@pytest.fixture(scope="module")
-def raster():
+@pytest.fixture
+def raster(browser):
     """A function that rasterises an SVG at three pixels a point, as an array of grey levels from 0 to 1."""
-    chromium = required_tool("chromium", "chromium-browser", "google-chrome")
-    from playwright.sync_api import sync_playwright
+    page = browser.new_page(viewport={"width": 723, "height": 900})
 
-    with sync_playwright() as playwright:
-        browser = playwright.chromium.launch(executable_path=chromium, args=FLAGS)
-        page = browser.new_page(viewport={"width": 723, "height": 900})
+    def rasterise(svg: bytes) -> np.ndarray:
+        page.set_content(f'<body style="margin:0">{svg.decode()}')
+        # The dashes of a line shift with its length, which decimation shortens a little: compare whole lines.
+        page.add_style_tag(content="svg{width:723px;height:auto;display:block}path{stroke-dasharray:none!important}")
+        return np.asarray(Image.open(io.BytesIO(page.screenshot())).convert("L"), dtype=float) / 255
 
-        def rasterise(svg: bytes) -> np.ndarray:
-            page.set_content(f'<body style="margin:0">{svg.decode()}')
-            # The dashes of a line shift with its length, which decimation shortens a little: compare whole lines.
-            page.add_style_tag(
-                content="svg{width:723px;height:auto;display:block}path{stroke-dasharray:none!important}"
-            )
-            return np.asarray(Image.open(io.BytesIO(page.screenshot())).convert("L"), dtype=float) / 255
-
-        yield rasterise
-        browser.close()
+    yield rasterise
+    page.close()
 
 
 @pytest.mark.parametrize(("module", "slug"), [("heat", "copper"), ("density_of_states", "copper")])

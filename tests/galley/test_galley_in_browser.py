@@ -3,22 +3,10 @@
 from __future__ import annotations
 
 import pytest
-from support.browsing import FLAGS, watched_page
+from support.browsing import watched_page
 from support.folders import FILES
-from support.tools import required_tool
 
 pytestmark = pytest.mark.xdist_group("galley")
-
-
-@pytest.fixture(scope="module")
-def browser():
-    chromium = required_tool("chromium", "chromium-browser", "google-chrome")
-    from playwright.sync_api import sync_playwright
-
-    with sync_playwright() as playwright:
-        running = playwright.chromium.launch(executable_path=chromium, args=FLAGS)
-        yield running
-        running.close()
 
 
 def save(galley, text: str) -> None:

@@ -37,10 +37,14 @@ def watched_page(browser, **settings) -> Iterator[tuple]:
         if not request.url.startswith(HERE):
             troubles.append(f"outside: {request.url}")
 
+    def failed(request) -> None:
+        if request.failure != "net::ERR_ABORTED":  # given up by the browser itself, for the next page
+            troubles.append(f"failed: {request.url} ({request.failure})")
+
     page.on("console", heard)
     page.on("request", asked)
     page.on("pageerror", lambda error: troubles.append(str(error)))
-    page.on("requestfailed", lambda request: troubles.append(f"failed: {request.url}"))
+    page.on("requestfailed", failed)
     try:
         yield page, troubles
     finally:
