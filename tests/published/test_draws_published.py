@@ -19,7 +19,7 @@ from sheetgen.quantities.registry import Registry
 from sheetgen.uncertainty import propagate
 
 
-def drawn(model, draws: int = 2**16, **inputs: tuple[float, float]) -> Interval:
+def drawn(model, draws: int = 2**20, **inputs: tuple[float, float]) -> Interval:
     """The interval of a model of inputs (estimate, standard uncertainty)."""
     declared = Declarations()
     declared.quantity(symbol="y", unit="1", formula="y", source="", section="Crystal", id="result")(model)
