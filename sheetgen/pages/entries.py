@@ -15,11 +15,12 @@ AXES = ("temperature", "photon_energy", "edge", "specimen")
 
 @dataclass(frozen=True)
 class Cell:
-    """One number as it is printed, with its standing."""
+    """One number as it is printed, with its standing; `anchor` is the id of its place in a list."""
 
     value: Markup
     standing: str
     unit: Markup = Markup("")
+    anchor: str = ""
 
 
 @dataclass(frozen=True)

@@ -64,8 +64,9 @@ class _Layout:
     def assets(self) -> Iterator[tuple[str, bytes]]:
         """Style sheet (for the imprint's paper), icon, script and fonts."""
         yield "style/handbook.css", self.press.render("style.css", **self.shared)
-        for name in ("icon.svg", "table.js"):
-            yield f"style/{name}", (template_folder() / name).read_bytes()
+        for path in sorted(template_folder().iterdir()):
+            if path.name == "icon.svg" or path.suffix == ".js" or (path.suffix == ".css" and path.name != "style.css"):
+                yield f"style/{path.name}", path.read_bytes()
         for font in sorted((template_folder() / "fonts").iterdir()):
             if font.suffix == ".woff2" or font.name == "OFL.txt":
                 yield f"style/fonts/{font.name}", font.read_bytes()

@@ -10,7 +10,7 @@ from typing import Any
 
 from markupsafe import Markup
 
-from . import citations, entries, hazards, metadata, numbers, words
+from . import citations, copying, entries, hazards, metadata, numbers, words
 from .entries import Cell, Line
 from .evidence import Evidence
 
@@ -235,7 +235,8 @@ class SheetPage:
         pairs = [self.preference.number(definition.id, entry) if entry else None for entry in chosen]
         power, cells = numbers.column(pairs, whole)
         printed = tuple(
-            Cell(cell, entry["standing"]) if entry else None for cell, entry in zip(cells, chosen, strict=True)
+            Cell(cell, entry["standing"], anchor=copying.anchor(definition.id, entry, repeat)) if entry else None
+            for cell, entry, (_, repeat) in zip(cells, chosen, columns, strict=True)
         )
         unit = numbers.unit(self.preference.of(definition.id, present[0]["unit"]))
         return Row(definition.id, definition.symbol, definition.title, power, unit, printed, anchored)

@@ -186,8 +186,8 @@ def _polar_nodes() -> tuple[np.ndarray, np.ndarray]:
 
 
 @cache
-def _film_nodes() -> tuple[np.ndarray, np.ndarray, np.ndarray, np.ndarray, np.ndarray]:
-    """w, 1/√(1−w²) and weights in s, x = ln(1 + eˢ), w = tanh x; then cosh y and weights in y."""
+def film_nodes() -> tuple[np.ndarray, np.ndarray, np.ndarray, np.ndarray, np.ndarray]:
+    """What film_factor sums over: w, 1/√(1−w²) and weights in s, x = ln(1 + eˢ), w = tanh x; cosh y and weights in y."""
     s = np.arange(-9.0, 12.5, _STEP)
     growth = 1 + np.exp(s)
     inverse_sine = (growth + 1 / growth) / 2
@@ -208,7 +208,7 @@ def _tail(rate: int) -> float:
 
 def _conductance(kappa: np.ndarray, alpha: np.ndarray, specularity: np.ndarray) -> np.ndarray:
     """ρ₀/ρ of specimens (N,)."""
-    cosine, inverse_sine, outer, inverse_azimuth, inner = _film_nodes()
+    cosine, inverse_sine, outer, inverse_azimuth, inner = film_nodes()
     slowing = 1 + alpha[:, None] / cosine
     exponent = (kappa[:, None] * slowing * inverse_sine)[..., None] * inverse_azimuth
     freedom = _freedom(exponent, specularity[:, None, None]) @ inner
