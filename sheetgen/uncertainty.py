@@ -6,6 +6,7 @@ along several paths counts once, since each input is moved in all of them togeth
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable
 from dataclasses import dataclass, field
 
@@ -53,7 +54,8 @@ class Derived:
                 input_id = self.batch.ids[name][row][k]
                 # Two paths of one input add as they are, before squaring.
                 parts[input_id] = parts.get(input_id, 0.0) + part
-        variance = sum(part**2 for part in parts.values())
+        # fsum: the built-in sum adds floats in another way from Python 3.12 on, and every version gives the same bytes.
+        variance = math.fsum(part**2 for part in parts.values())
         if variance <= 0:
             return Number(value)
         shares = {input_id: part**2 / variance for input_id, part in parts.items()}
