@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterator
 
-from sheetgen.errata import Errata, MaterialErrata
-from sheetgen.pages.changes import input_change_words, number_words, size_words, why_words
+from sheetgen.errata import Errata, MaterialErrata, Moved
+from sheetgen.pages.changes import SPREAD, input_change_words, number_words, size_words, why_words
 
 
 def lines(errata: Errata) -> Iterator[str]:
@@ -44,15 +45,25 @@ def _material(material: MaterialErrata) -> Iterator[str]:
         yield _line("input", f"{change.cause}: {input_change_words(change)}")
     for name, what in material.specimens.items():
         yield _line("specimen", f"{name} is {what}")
-    for moved in material.moved:
+    for moved in (one for one in material.moved if one.beyond != SPREAD):
         where = f" {moved.point.place}" if moved.point.place else ""
         values = f"{number_words(moved.old, moved.unit)} → {number_words(moved.new, moved.unit)}"
         size = f", {size_words(moved)}" if size_words(moved) else ""
         yield _line("number", f"{moved.point.quantity}{where}: {values}{size}; because of {why_words(moved, str)}")
+    yield from _spreads([one for one in material.moved if one.beyond == SPREAD])
     for change in material.standings:
         where = f" {change.point.place}" if change.point.place else ""
         why = ", ".join(change.because) or "several changes together"
         yield _line("standing", f"{change.point.quantity}{where}: {change.old} → {change.new}; because of {why}")
+
+
+def _spreads(moved: list[Moved]) -> Iterator[str]:
+    """One line for all numbers whose uncertainty alone is another one: a list of many entries has many of them."""
+    if moved:
+        entries = Counter(one.point.quantity for one in moved)
+        named = ", ".join(f"{id} ({count} entries)" if count > 1 else id for id, count in entries.items())
+        causes = dict.fromkeys(share.cause for one in moved for share in one.because)
+        yield _line("u alone", f"{named}; because of {', '.join(causes) or 'several changes together'}")
 
 
 def _line(head: str, text: str) -> str:

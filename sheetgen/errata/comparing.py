@@ -7,6 +7,7 @@ from collections.abc import Iterable, Iterator, Mapping
 from typing import Any
 
 from sheetgen.errata.model import AXES, Point
+from sheetgen.quantities.inputs import NEARBY
 from sheetgen.records import si_factor
 from sheetgen.records.unreadable import UnreadableError
 
@@ -48,19 +49,29 @@ def paired(old: dict[Point, Entry], new: dict[Point, Entry], by_resistivity: Ite
     """Entries of the same place side by side, in the order of the new edition, then those that are gone.
 
     The quantities named in `by_resistivity` have one entry for each resistivity: where one was taken at another
-    temperature than its predecessor, what is left over on both sides belongs together in its order.
+    temperature than its predecessor, what is left over on both sides may belong together.
     """
     gone = {point: entry for point, entry in old.items() if point not in new}
     successors: dict[Point, Point] = {}
     for id in by_resistivity:
         fresh = [point for point in new if point.quantity == id and point not in old]
-        left = [point for point in gone if point.quantity == id]
-        if len(fresh) == len(left):
-            successors |= dict(zip(fresh, left, strict=True))
+        successors |= _predecessors(fresh, [point for point in gone if point.quantity == id])
     for point, entry in new.items():
         yield point, old.get(successors.get(point, point)), entry
     taken = set(successors.values())
     yield from ((point, entry, None) for point, entry in gone.items() if point not in taken)
+
+
+def _predecessors(fresh: list[Point], left: list[Point]) -> dict[Point, Point]:
+    """Which of the entries left over each fresh one replaces: one at nearly its temperature, else by their order."""
+    found: dict[Point, Point] = {}
+    for point in fresh:
+        near = [one for one in left if one not in found.values() and abs(one.at - point.at) <= NEARBY]
+        if near:
+            found[point] = min(near, key=lambda one: abs(one.at - point.at))
+    fresh = [point for point in fresh if point not in found]
+    left = [point for point in left if point not in found.values()]
+    return found | (dict(zip(fresh, left, strict=True)) if len(fresh) == len(left) else {})
 
 
 def in_unit(entry: Entry, unit: str) -> Entry:

@@ -18,7 +18,8 @@ if TYPE_CHECKING:
 PAGE, FEED = "changes.html", "changes.atom"
 # A name of our own under which the entries of a feed without an address get theirs.
 NAMESPACE = uuid.UUID("6f0b3a52-6a55-5e0c-9d8b-0c7d1f7d9a11")
-ASPECTS = {"standard_uncertainty": "uncertainty", "temperature": "temperature", "sources": "source", "unit": "unit"}
+SPREAD = "its uncertainty"
+SLIGHT = 1e-3  # of a change: a share below it is in the data of the errata, and not in its words
 
 
 class Changes:
@@ -98,34 +99,29 @@ def size_words(moved: Moved) -> str:
     """By how much a number moved: in itself, as a part of it, and counted in its standard uncertainty."""
     if moved.change is None:
         return {"presence": "new" if moved.old is None else "withdrawn"}.get(moved.beyond, "")
-    if moved.beyond == "its uncertainty":
+    if moved.beyond == SPREAD:
         return "uncertainty only"
-    parts = [signed(100 * moved.relative) + " %"] if moved.relative is not None else []
+    parts = [f"{signed(100 * moved.relative)}{numbers.NARROW}%"] if moved.relative is not None else []
     if moved.in_uncertainties is not None:
-        parts.append(f"{abs(moved.in_uncertainties):.2g} u")
+        parts.append(f"{abs(moved.in_uncertainties):.2g}{numbers.NARROW}u")
     return f"{signed(moved.change)}" + (f" ({', '.join(parts)})" if parts else "")
 
 
 def why_words(moved: Moved, named: Callable[[str], str] = cause_words) -> str:
     """The causes of a change with what each does alone, and what they do together beyond that."""
-    shares = moved.because
-    if not shares:
+    if not moved.because:
         return "several changes together" if moved.how == "derived" else "not told by the data"
-    if len(shares) == 1 and moved.interaction is None:
-        told = named(shares[0].cause)
-    else:
-        parts = [named(share.cause) + _part(share.change, moved.change) for share in shares]
-        if moved.interaction is not None:
-            parts.append("their interaction" + _part(moved.interaction, moved.change))
-        told = ", ".join(parts)
+    parts = [(named(share.cause), share.change) for share in moved.because]
+    parts += [("their interaction", moved.interaction)] if moved.interaction is not None else []
+    shown = [part for part in parts if part[1] is None or not moved.change or abs(part[1] / moved.change) >= SLIGHT]
+    told = shown[0][0] if len(shown) == 1 else ", ".join(name + _part(size, moved.change) for name, size in shown)
     return told if moved.how == "derived" else f"{told} (inferred)"
 
 
 def _part(change: float | None, whole: float | None) -> str:
     if change is None or not whole:
         return ""
-    share = 100 * change / whole
-    return f" {signed(change)} ({signed(share) if abs(share) >= 0.1 else '≈ 0'} %)"
+    return f" {signed(change)} ({signed(100 * change / whole)}{numbers.NARROW}%)"
 
 
 def signed(number: float) -> str:
@@ -173,7 +169,8 @@ class _Material:
         self.slug, self.name, self.formula = one.slug, one.name, one.formula
         self.inputs = [(cause_words(change.cause), input_change_words(change)) for change in one.inputs]
         self.specimens = one.specimens
-        self.numbers = [_Line(moved) for moved in one.moved]
+        self.numbers = [_Line(moved) for moved in one.moved if moved.beyond != SPREAD]
+        self.spreads = [_Line(moved) for moved in one.moved if moved.beyond == SPREAD]
         self.standings = [
             (change.title, change.point.place, change.kind, change.old, change.new, _causes(change.because))
             for change in one.standings
@@ -187,7 +184,7 @@ class _Line:
         self.quantity, self.title, self.place = moved.point.quantity, moved.title, moved.point.place
         self.old, self.new = (number_words(stated, moved.unit) for stated in (moved.old, moved.new))
         self.size, self.why = size_words(moved), why_words(moved)
-        self.beyond = moved.beyond == "uncertainty"
+        self.beyond, self.is_list = moved.beyond == "uncertainty", moved.beyond == "list"
 
 
 def _causes(because: tuple[str, ...]) -> str:

@@ -10,7 +10,7 @@ from typing import TYPE_CHECKING
 
 from sheetgen.faults import Fault
 from sheetgen.press.disk import Disk
-from sheetgen.press.manifest import fingerprints
+from sheetgen.press.manifest import digest, fingerprints
 from sheetgen.press.publishing import Report, publish
 
 if TYPE_CHECKING:
@@ -52,6 +52,8 @@ def press(
     inputs = fingerprints(folder)
     progress("reading records", 0, 0)
     handbook = Handbook.load(folder, draws=draws)
+    if earlier := handbook.imprint.previous_edition:
+        inputs[earlier.relative_to(folder).as_posix()] = digest(earlier.read_bytes())
     figures = _figures(handbook, progress, draw)
     files = chain(documents(handbook, figures), lay_out(handbook, figures))
     report = publish(

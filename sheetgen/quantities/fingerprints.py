@@ -1,7 +1,7 @@
 """Fingerprints of definitions: two editions with equal ones computed a quantity in the same way.
 
 A fingerprint covers what is declared (unit, formula, what it reads), the function, and every function and plain
-constant of ours that it calls or reads. Comments, docstrings and spaces do not count.
+constant of the program, or of its own file, that it calls or reads. Comments, docstrings and spaces do not count.
 """
 
 from __future__ import annotations
@@ -11,7 +11,7 @@ import hashlib
 import inspect
 import re
 from collections.abc import Callable, Iterator
-from functools import cache
+from functools import lru_cache
 from pathlib import Path
 from types import CodeType, FunctionType, ModuleType
 from typing import Any
@@ -64,7 +64,7 @@ def _reached(function: FunctionType) -> Iterator[tuple[str, Any]]:
             inside = {name: found}
         for word, what in inside.items():
             what = inspect.unwrap(what) if callable(what) else what
-            if _is_plain(what) or isinstance(what, FunctionType) and _is_ours(what):
+            if _is_plain(what) or (isinstance(what, FunctionType) and _is_ours(what, function)):
                 yield word, what
 
 
@@ -72,8 +72,10 @@ def _is_plain(constant: Any) -> bool:
     return all(map(_is_plain, constant)) if isinstance(constant, tuple) else isinstance(constant, _PLAIN)
 
 
-def _is_ours(function: FunctionType) -> bool:
-    return (function.__module__ or "").startswith("sheetgen.")
+def _is_ours(function: FunctionType, reader: FunctionType) -> bool:
+    """Whether a function is one of the program's, or stands in the same file as the one that reads it."""
+    same_file = function.__code__.co_filename == reader.__code__.co_filename
+    return same_file or (function.__module__ or "").startswith("sheetgen.")
 
 
 def _names(code: CodeType) -> list[str]:
@@ -84,15 +86,19 @@ def _names(code: CodeType) -> list[str]:
 
 def _words(function: FunctionType) -> str:
     """The text of a function without decorators, docstring, comments and spaces; its place, where that is not known."""
-    text = _sources(function.__code__.co_filename).get(function.__code__.co_name)
-    return text or function.__qualname__
+    path = Path(function.__code__.co_filename)
+    try:
+        saved = path.stat().st_mtime_ns  # a group's own file may be another one at the next press of a galley
+    except OSError:
+        return function.__qualname__
+    return _sources(path, saved).get(function.__code__.co_name) or function.__qualname__
 
 
-@cache
-def _sources(file: str) -> dict[str, str]:
+@lru_cache(maxsize=256)
+def _sources(path: Path, _saved: int) -> dict[str, str]:
     """Function name → its words, for every function of a file; empty where the file cannot be read."""
     try:
-        text = Path(file).read_text(encoding="utf-8")
+        text = path.read_text(encoding="utf-8")
         tree = ast.parse(text)
     except (OSError, ValueError, SyntaxError):
         return {}

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import hashlib
+import json
 import re
 import xml.etree.ElementTree as ElementTree
 from pathlib import Path
@@ -49,6 +51,12 @@ def test_the_page_says_what_moved_and_why(folder, tmp_path):
     assert "Withdrawn: Quantum well" in text
     assert "adjust → fails , because of heat coefficient" in text
     assert "Sil&lt;b&gt;ver" in page and "<b>ver" not in page
+
+
+def test_the_manifest_names_the_earlier_edition_among_the_inputs(folder, tmp_path):
+    press(say(folder, EARLIER), tmp_path / "site")
+    inputs = json.loads((tmp_path / "site" / "manifest.json").read_bytes())["inputs"]
+    assert inputs["editions/1.json"] == hashlib.sha256((folder / "editions" / "1.json").read_bytes()).hexdigest()
 
 
 def test_without_an_earlier_edition_the_page_says_so(small_handbook, tmp_path):

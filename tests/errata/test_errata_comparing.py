@@ -74,3 +74,9 @@ def test_a_resistivity_taken_at_another_temperature_replaces_its_predecessor():
     assert len(apart) == 2
     together = {point: (o["value"], n["value"]) for point, o, n in paired(old, new, ["relaxation_time"])}
     assert together[Point("relaxation_time", None, "temperature", 295.0)] == (293.0, 295.0)
+
+
+def test_of_several_left_over_the_one_at_nearly_the_same_temperature_is_replaced():
+    old, new = entries_of(material(293, 273)), entries_of(material(295))
+    pairs = [(o and o["value"], n and n["value"]) for _, o, n in paired(old, new, ["relaxation_time"])]
+    assert pairs == [(293.0, 295.0), (273.0, None)]

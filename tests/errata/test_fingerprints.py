@@ -86,3 +86,31 @@ def test_they_are_the_same_in_another_process():
         [sys.executable, "-c", program], capture_output=True, text=True, check=True, env={"PYTHONHASHSEED": "7"}
     )
     assert run.stdout.split() == [fingerprint(declared.definitions_of(id)) for id in declared.published()]
+
+
+OWN = '''\
+from sheetgen.quantities import Declarations
+
+declarations = Declarations()
+
+
+def helper(x):
+    return x * {factor}
+
+
+@declarations.quantity(symbol="A", unit="eV", formula="3 E", source="a test", section="Crystal")
+def invented(fermi_energy):
+    """Invented."""
+    return helper(fermi_energy)
+'''
+
+
+def test_a_helper_in_a_groups_own_file_counts_also_when_it_is_saved_anew(tmp_path):
+    from quantities.small import COPPER, IMPRINT, handbook_of
+
+    prints = []
+    for factor in (3.0, 3.1, 3.0):
+        tmp_path.joinpath("quantities.py").write_text(OWN.format(factor=factor))
+        book = handbook_of(tmp_path, IMPRINT + "own quantities: quantities.py\n", copper=COPPER)
+        prints.append(fingerprint(book.registry.definitions_of("invented")))
+    assert prints[0] == prints[2] != prints[1]
