@@ -78,9 +78,12 @@ class _Comparison:
 
     def __init__(self, old: Edition, new: Edition):
         self.old, self.new = old, new
+        # Data that do not say under which conditions they were derived are taken to have those of the other edition.
+        self.old_imprint = old.imprint if "conditions" in old.data else new.imprint
+        self.new_imprint = new.imprint if "conditions" in new.data else old.imprint
         at_hand = next((edition.handbook for edition in (new, old) if edition.handbook), None)
         self.registry: Registry = at_hand.registry if at_hand else registry()
-        self.program = _program(old, new)
+        self.program = _program(old, new, (self.old_imprint, self.new_imprint))
         all_ids = {*self.registry.published(), *self.registry.published("specimen")}
         self.by_resistivity = [id for id in all_ids if self.registry[id].listed_by == "resistivity"]
 
@@ -105,7 +108,7 @@ class _Comparison:
             under_old.append(_marked(old, "old"))
             under_old += [_marked(one.record, str(n), case.slug) for n, one in enumerate(causes[case.slug])]
             under_new += [_marked(new, "new"), *([_marked(old, "conditions")] if self._conditions_differ else [])]
-        data = self._derive(under_old, self.old.imprint) | self._derive(under_new, self.new.imprint)
+        data = self._derive(under_old, self.old_imprint) | self._derive(under_new, self.new_imprint)
         return {slug: self._collected(slug, alone, data) for slug, alone in causes.items()}
 
     @property
@@ -283,7 +286,7 @@ def _differ(one: Entry | None, other: Entry | None) -> bool:
     return moved_beyond(one, in_unit(other, one["unit"])) is not None
 
 
-def _program(old: Edition, new: Edition) -> ProgramErrata:
+def _program(old: Edition, new: Edition, imprints: tuple[Imprint, Imprint]) -> ProgramErrata:
     before, after = (edition.data.get("quantities", {}) for edition in (old, new))
     definitions = {}
     for id in dict.fromkeys((*after, *before)):
@@ -295,7 +298,7 @@ def _program(old: Edition, new: Edition) -> ProgramErrata:
             definitions[id] = "changed"
     conditions = {}
     for key in ("reference_temperature", "temperatures", "thresholds"):
-        one, other = (_plain(getattr(edition.imprint, key)) for edition in (old, new))
+        one, other = (_plain(getattr(imprint, key)) for imprint in imprints)
         if one != other:
             conditions[key] = (one, other)
     texts = [[str(edition.data.get(key, "")) for edition in (old, new)] for key in ("version", "constants")]

@@ -8,7 +8,7 @@ import tarfile
 import tempfile
 from collections.abc import Iterator
 from contextlib import contextmanager
-from pathlib import Path
+from pathlib import Path, PurePosixPath
 
 from sheetgen.faults import MachineError
 
@@ -53,6 +53,24 @@ def _unpack(archive: bytes, folder: Path, revision: str) -> None:
                 path.symlink_to(member.linkname)
             elif content := files.extractfile(member):
                 path.write_bytes(content.read())
+
+
+def _unpack(archive: bytes, copy: Path, revision: str) -> None:
+    """Write the files of an archive below a folder; a link inside it becomes what it leads to."""
+    with tarfile.open(fileobj=io.BytesIO(archive)) as files:
+        for member in files:
+            if member.isdir():
+                continue
+            parts = PurePosixPath(member.name).parts
+            try:
+                content = None if ".." in parts or parts[0] == "/" else files.extractfile(member)
+            except KeyError:
+                content = None
+            if content is None:
+                raise EditionError(f"'{revision}' holds {member.name}, which leads out of the folder of records.")
+            path = copy.joinpath(*parts)
+            path.parent.mkdir(parents=True, exist_ok=True)
+            path.write_bytes(content.read())
 
 
 def _tree(revision: str, folder: Path) -> tuple[Path, str]:

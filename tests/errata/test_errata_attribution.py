@@ -197,3 +197,11 @@ def test_data_files_alone_give_the_same_errata(edition, data_alone):
     old, new = edition("1", copper=COPPER, well=WELL), edition("2", copper=new, well=WELL.replace("0.067", "0.07"))
     assert errata(data_alone(old), data_alone(new)).as_json() == errata(old, new).as_json()
     assert errata(data_alone(old), new).as_json() == errata(old, new).as_json()
+
+
+def test_data_without_conditions_are_taken_to_have_those_of_the_other_edition(edition, data_alone):
+    conditions = "reference temperature: 300 K\ntemperatures: [300 K]\n"
+    old = data_alone(edition("1", conditions))
+    del old.data["conditions"]
+    found = errata(old, edition("2", conditions))
+    assert (found.program.conditions, found.count) == ({}, 0)

@@ -76,12 +76,21 @@ def test_words_that_are_no_revision(repository, monkeypatch, word, line):
     assert str(refused.value) == line
 
 
-def test_a_link_that_leads_out_is_refused(repository):
-    (repository / "records" / "silver.yaml").symlink_to("/etc/passwd")
+@pytest.mark.parametrize("target", ["/etc/passwd", "../../outside.yaml", "nowhere.yaml"])
+def test_a_link_that_leads_out_is_refused(repository, target):
+    (repository / "records" / "silver.yaml").symlink_to(target)
     git(repository, "add", ".")
     git(repository, "commit", "-q", "-m", "Link")
-    with pytest.raises(EditionError, match="holds a link that leads out of the folder"):
+    with pytest.raises(EditionError) as refused:
         open_edition("HEAD", repository / "records")
+    assert str(refused.value) == "'HEAD' holds silver.yaml, which leads out of the folder of records."
+
+
+def test_a_link_inside_the_folder_is_what_it_leads_to(repository):
+    (repository / "records" / "silver.yaml").symlink_to("copper.yaml")
+    git(repository, "add", ".")
+    git(repository, "commit", "-q", "-m", "Link")
+    assert list(open_edition("HEAD", repository / "records").materials) == ["copper", "silver"]
 
 
 def test_without_git(repository, monkeypatch):
