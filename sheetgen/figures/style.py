@@ -143,3 +143,8 @@ def sheet(classes: frozenset[str]) -> str:
         f"{root}{{{_variables(LIGHT)}}}"
         f"@media screen and (prefers-color-scheme:dark){{{root}{{{_variables(DARK)}}}}}" + scoped
     )
+
+
+def whole_sheet() -> str:
+    """The style sheet for any number of figures that one page shows inline."""
+    return sheet(frozenset(_CLASS.findall("".join(_rules()))))

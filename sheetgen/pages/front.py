@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import math
+from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Any
 
@@ -18,6 +20,8 @@ COLUMNS = (
     "relaxation_time",
     "mean_free_path",
 )
+# Rows of the table on one page.
+ROWS = 200
 
 
 @dataclass(frozen=True)
@@ -35,13 +39,33 @@ class Column:
 
 def context(handbook: Any) -> dict[str, Any]:
     """The names that the front page's template uses."""
-    columns = [column for id in COLUMNS if (column := _column(id, handbook))]
+    lattices = {sheet.record.crystal.lattice for sheet in handbook.sheets if sheet.record.crystal}
     return {
-        "columns": columns,
-        "materials": [_material(sheet, row, columns) for row, sheet in enumerate(handbook.sheets)],
+        **leaf(handbook, 1),
+        "count": len(handbook.sheets),
         "drafts": sum(is_draft(sheet) for sheet in handbook.sheets),
+        "elements": sorted({element for sheet in handbook.sheets for element in sheet.record.composition}),
+        "lattices": sorted(lattices),
         "json_ld": metadata.whole(handbook),
         "citation": citation(handbook),
+    }
+
+
+def leaves(handbook: Any) -> list[str]:
+    """The pages over which the table is spread for those who read it without a script."""
+    number = max(1, math.ceil(len(handbook.sheets) / ROWS))
+    return ["index.html", *(f"materials-{page}.html" for page in range(2, number + 1))]
+
+
+def leaf(handbook: Any, number: int) -> dict[str, Any]:
+    """The names that one page of the table uses, counted from 1."""
+    sheets = handbook.sheets[(number - 1) * ROWS : number * ROWS]
+    columns = [column for id in COLUMNS if (column := _column(id, handbook, sheets))]
+    return {
+        "columns": columns,
+        "materials": [_material(sheet, row, columns) for row, sheet in enumerate(sheets)],
+        "leaves": leaves(handbook),
+        "leaf": number,
     }
 
 
@@ -57,13 +81,13 @@ def is_draft(sheet: Any) -> bool:
     return sheet.record.review is None or sheet.record.review.state != "reviewed"
 
 
-def _column(id: str, handbook: Any) -> Column | None:
+def _column(id: str, handbook: Any, sheets: Sequence[Any]) -> Column | None:
     if id not in handbook.registry.published():
         return None
     definition = handbook.registry.definitions_of(id)[0]
     preference = entries.Preference(handbook.imprint.units)
     # A two-dimensional gas may state the same quantity in another unit; such a cell has no place in this column.
-    first = [next(iter(sheet.entries(id)), None) for sheet in handbook.sheets]
+    first = [next(iter(sheet.entries(id)), None) for sheet in sheets]
     fitting = [entry if entry and entry["unit"] == definition.unit else None for entry in first]
     if not any(fitting):
         return None
@@ -103,6 +127,19 @@ def electrons(record: Any) -> Markup:
     return numbers.with_unit(
         numbers.stated(stated.density.value, stated.density.standard_uncertainty), stated.density.unit
     )
+
+
+def electrons_text(record: Any) -> str:
+    """The same as plain Unicode."""
+    stated = record.electrons
+    if stated.valence:
+        several = len(stated.valence) > 1
+        counts = {e: numbers.stated(v.value, v.standard_uncertainty).text for e, v in stated.valence.items()}
+        return ", ".join(f"{element}\u00a0{count}" if several else count for element, count in counts.items())
+    if stated.density is None:
+        return ""
+    number = numbers.stated(stated.density.value, stated.density.standard_uncertainty).text
+    return f"{number}{numbers.NARROW}{numbers.unit_text(stated.density.unit)}"
 
 
 def standings(sheet: Any) -> list[tuple[str, int]]:

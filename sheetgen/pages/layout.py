@@ -10,6 +10,8 @@ from typing import Any
 
 from . import changes, citations, front, quantity, reference, words
 from .environment import Press, template_folder
+from .finding import finding
+from .gallery import Gallery
 from .sheet import SheetPage
 
 # 'self' has no certain meaning for a page opened from a disk; `file:` says it there, and grants nothing on a server,
@@ -26,19 +28,22 @@ def lay_out(handbook: Any, figures: Mapping[str, Sequence[Any]]) -> Iterator[tup
 
     Raises FaultsError, naming template:line, where a template cannot be rendered.
     """
-    layout = _Layout(handbook)
+    layout, gallery = _Layout(handbook), Gallery(handbook)
     yield from layout.assets()
     yield "index.html", layout.page("index.html", "", **front.context(handbook))
     for sheet in handbook.sheets:
         yield f"materials/{sheet.record.slug}.html", layout.sheet(sheet, figures.get(sheet.record.slug, ()))
     for id in dict.fromkeys([*handbook.registry.published(), *handbook.registry.published("specimen")]):
-        yield f"quantities/{id}.html", layout.page("quantity.html", "../", **quantity.context(id, handbook))
+        yield f"quantities/{id}.html", layout.page(
+            "quantity.html", "../", plot=gallery.ranking(id), **quantity.context(id, handbook)
+        )
     yield "methods.html", layout.page("methods.html", "", **reference.methods(handbook))
     yield "limits.html", layout.page("limits.html", "", **reference.limits(handbook))
     yield "sources.html", layout.page("sources.html", "", **reference.sources(handbook))
     since = changes.Changes(handbook)
     yield changes.PAGE, layout.page("changes.html", "", **since.context())
     yield from since.feed()
+    yield from finding(handbook, figures, gallery, layout.page)
 
 
 @cache
