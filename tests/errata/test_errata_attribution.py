@@ -5,9 +5,9 @@ from __future__ import annotations
 import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
-from quantities.small import COPPER, WELL
+from quantities.small import COPPER, IMPRINT, WELL, handbook_of
 
-from sheetgen.errata import errata
+from sheetgen.errata import edition_of, errata
 
 
 def the(found, quantity, slug="copper", at=None, specimen=None):
@@ -205,3 +205,30 @@ def test_data_without_conditions_are_taken_to_have_those_of_the_other_edition(ed
     del old.data["conditions"]
     found = errata(old, edition("2", conditions))
     assert (found.program.conditions, found.count) == ({}, 0)
+
+
+OWN = '''\
+from sheetgen.quantities import Declarations
+
+declarations = Declarations()
+
+
+@declarations.quantity(symbol="A", unit="eV", formula="E", source="a test", section="Crystal")
+def invented(fermi_energy):
+    """Invented."""
+    return {factor} * fermi_energy
+'''
+
+
+def test_a_groups_own_definition(tmp_path):
+    editions = []
+    for name, factor in (("1", 2.0), ("2", 3.0)):
+        (tmp_path / name).mkdir()
+        (tmp_path / name / "quantities.py").write_text(OWN.format(factor=factor), encoding="utf-8")
+        imprint = IMPRINT.replace('"1"', f'"{name}"') + "own quantities: quantities.py\n"
+        editions.append(edition_of(handbook_of(tmp_path / name, imprint, copper=COPPER)))
+    found = errata(*editions)
+    assert found.program.definitions == {"invented": "changed"}
+    [moved] = found.materials[0].moved
+    assert (moved.point.quantity, moved.relative) == ("invented", pytest.approx(0.5))
+    assert shares(moved) == {"the program": pytest.approx(moved.change)}
