@@ -28,8 +28,9 @@ MOST_BARS = 8
 
 
 def draw(subject: Subject) -> Figure | None:
-    """Sphere and zone of one crystal whose electrons are given by valence."""
-    return stamp(plot(subject)) if subject.has("fermi_wavevector", "fermi_to_zone_ratio") else None
+    """Sphere and zone of one crystal whose electrons are given by valence, unless they fill zones without number."""
+    stated = subject.has("fermi_wavevector", "fermi_to_zone_ratio") and subject.sheet.entries("zone_occupation")
+    return stamp(plot(subject)) if stated else None
 
 
 def plot(subject: Subject) -> Plot:

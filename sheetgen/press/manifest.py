@@ -43,12 +43,19 @@ def digest(data: bytes) -> str:
     return hashlib.sha256(data).hexdigest()
 
 
+def _digest_of_file(path: Path) -> str:
+    """The digest of a file of any size, of which the memory need hold no more than a piece."""
+    with path.open("rb") as stream:
+        return hashlib.file_digest(stream, "sha256").hexdigest()
+
+
 def fingerprints(folder: Path) -> dict[str, str]:
     """SHA-256 of every file of the folder that a handbook may be made from, by name."""
     return {
-        path.name: digest(path.read_bytes())
+        path.name: _digest_of_file(path)
         for path in sorted(folder.iterdir())
         if path.suffix in INPUT_SUFFIXES and not path.name.startswith(".") and path.is_file()
+        if path.name.isprintable()  # any other name is a fault of a record's, and no text to write down
     }
 
 

@@ -14,6 +14,9 @@ from sheetgen.records.model import Crystal, Site, Value
 FRACTION_TOLERANCE = 1e-3
 DENOMINATORS = (1, 2, 3, 4, 5, 6, 8, 12)
 OVERLAP_DISTANCE = 0.5e-10
+# A needle or a sheet of a cell holds lattice points without number in a sphere as wide as it is long.
+LARGEST_RATIO = 30
+FLATTEST = 0.03  # volume of the cell over the product of its edges
 MAXIMUM_SITES = 1000
 
 _FRACTIONS = np.array(sorted({numerator / below for below in DENOMINATORS for numerator in range(below + 1)}))
@@ -63,9 +66,9 @@ def lengths_and_angles(crystal: Crystal) -> tuple[tuple[float, float, float], tu
 
 
 def angles_close(alpha: float, beta: float, gamma: float) -> bool:
-    """Whether three angles (radians) can meet in the corner of a cell of positive volume."""
+    """Whether three angles (radians) can meet in the corner of a cell with room inside it."""
     cosines = [math.cos(angle) for angle in (alpha, beta, gamma)]
-    return 1 - sum(cosine**2 for cosine in cosines) + 2 * math.prod(cosines) > 1e-6
+    return 1 - sum(cosine**2 for cosine in cosines) + 2 * math.prod(cosines) > FLATTEST**2
 
 
 def metric(crystal: Crystal) -> np.ndarray:
@@ -75,6 +78,13 @@ def metric(crystal: Crystal) -> np.ndarray:
     for (one, other), angle in {(1, 2): alpha, (0, 2): beta, (0, 1): gamma}.items():
         cosines[one, other] = cosines[other, one] = math.cos(angle)
     return np.outer(lengths, lengths) * cosines
+
+
+def elongation(crystal: Crystal) -> float:
+    """The longest edge of the cell over its shortest translation, the diagonals of cell and faces included."""
+    steps = np.array([step for step in product((-1, 0, 1), repeat=3) if any(step)], dtype=float)
+    tensor = metric(crystal)
+    return math.sqrt(np.diagonal(tensor).max() / np.sum(steps @ tensor * steps, axis=-1).min())
 
 
 def overlapping(crystal: Crystal) -> tuple[Site, Site] | None:

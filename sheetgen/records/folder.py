@@ -95,9 +95,10 @@ def _slugs(folder: Path, names: list[str], log: FaultLog) -> list[str]:
     for name in names:
         if not name.lower().endswith(SUFFIXES) or name.lower() in ("handbook.yaml", "handbook.yml"):
             continue
-        place = Place(str(folder / name))
+        legible = "".join(sign if sign.isprintable() else "\ufffd" for sign in name)
+        place = Place(str(folder / legible))
         stem, suffix = name.rsplit(".", 1)
-        quoted = shown(name)
+        quoted = shown(legible)
         if other := fit.get(stem.lower()):
             log.fault(
                 place, f"{quoted} and {shown(other)} are one name on many disks and one address; rename one of them."
@@ -107,7 +108,8 @@ def _slugs(folder: Path, names: list[str], log: FaultLog) -> list[str]:
             log.fault(place, f"the file name {quoted} cannot be an address; {expected}. Rename it.")
         elif stem in _DEVICES:
             log.fault(place, f"the file name {quoted} is a device on Windows; choose another, such as {stem}-1.yaml.")
-        fit.setdefault(stem.lower(), name)
+        if legible == name:
+            fit.setdefault(stem.lower(), name)
     return list(fit.values())
 
 

@@ -8,6 +8,7 @@ from pathlib import Path
 from sheetgen.faults import FaultLog, Place
 from sheetgen.records.electrons import read_electrons
 from sheetgen.records.formulas import composition as composition_of
+from sheetgen.records.markdown import check_notes
 from sheetgen.records.measured import check_residual, measured_inputs, optical_inputs, read_measured, read_optical
 from sheetgen.records.model import Caution, Crystal, Electrons, Record, Review, Value
 from sheetgen.records.nodes import Listing, Scalar, Table
@@ -44,6 +45,7 @@ def _record(root: Table, path: Path, reader: Reader, folder: Path, reference: fl
     check_residual(measured, reference, reader)
     optical = read_optical(measured_table, reader)
     specimens = read_specimens(root.node("specimens") or Listing([], root.place), crystal, reader)
+    check_notes(root.node("notes"), reader)
     inputs = {f"structure.{key}": value for key, value in constants.items()}
     inputs |= {f"electrons.{key}": value for key, value in electron_values.items()}
     inputs |= measured_inputs(measured, reference) | optical_inputs(optical) | specimen_inputs(specimens)

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 
 from sheetgen.records import measures
 from sheetgen.records.lattices import LATTICES
+from sheetgen.records.markdown import LONGEST as LONGEST_NOTES
 from sheetgen.records.measures import Measure
 from sheetgen.records.spelling import american, key_variants
 
@@ -22,6 +23,8 @@ DIALECT = "https://json-schema.org/draft/2020-12/schema"
 
 ELEMENT_PATTERN = "^[A-Z][a-z]?$"
 HAZARD_PATTERN = r"^(EUH\d{3}[A-Z]?|H[234]\d{2}[A-Za-z]{0,2})(\s*\+\s*(EUH\d{3}[A-Z]?|H[234]\d{2}[A-Za-z]{0,2}))*$"
+
+LONGEST_SERIES = 200  # specimens of a record, and values of one measured property
 
 
 def _text(description: str, longest: int = 500) -> Schema:
@@ -93,6 +96,7 @@ def _values(measure: Measure) -> Schema:
         "description": description,
         "items": single,
         "minItems": 1,
+        "maxItems": LONGEST_SERIES,
     }
 
 
@@ -223,10 +227,10 @@ def canonical_schema() -> Schema:
                 "structure": _structure(),
                 "electrons": _electrons(),
                 "measured": _measured(),
-                "specimens": _list("a list of specimens", _specimen()),
+                "specimens": _list("a list of specimens", _specimen(), maxItems=LONGEST_SERIES),
                 "cautions": _list("a list of cautions", _caution()),
                 "review": _object("a mapping with state, by and date", review, ("state",)),
-                "notes": _text("notes in Markdown", 100_000),
+                "notes": _text("notes in Markdown", LONGEST_NOTES),
             },
             ("name", "formula"),
         ),

@@ -16,6 +16,7 @@ from sheetgen.records.unreadable import UnreadableError, sentence, shown
 MAXIMUM_BYTES = 4_000_000
 MAXIMUM_ENTRIES = 5000
 MAXIMUM_FIELD = 20_000
+MAXIMUM_FAULTS = 50
 
 _PEOPLE = ("author", "editor")
 _NO_SOURCES = ("string", "preamble")
@@ -33,21 +34,23 @@ class _Entry(NamedTuple):
 
 
 def read_sources(text: str, path: Path, log: FaultLog) -> dict[str, Source]:
-    """Every source by its key, in the order of the file; everything wrong is logged.
+    """Every source by its key, in the order of the file; what is wrong is logged, the first MAXIMUM_FAULTS of it.
 
     An entry at fault keeps its key, so that the records that cite it are not at fault, too.
     """
     sources: dict[str, Source] = {}
-    for entry in _entries(text, str(path), log):
+    own = FaultLog()
+    for entry in _entries(text, str(path), own):
         if first := sources.get(entry.key):
             again = f"the source {shown(entry.key)} stands a second time (first in line {first.place.line})"
-            log.fault(entry.place, f"{again}; keep one of them.")
+            own.fault(entry.place, f"{again}; keep one of them.")
             continue
         try:
             sources[entry.key] = _source(entry)
         except UnreadableError as error:
-            log.fault(entry.place, sentence(f"the source {shown(entry.key)}: {error}"))
+            own.fault(entry.place, sentence(f"the source {shown(entry.key)}: {error}"))
             sources[entry.key] = _bare_source(entry)
+    log.entries += own.entries[:MAXIMUM_FAULTS]
     return sources
 
 

@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from sheetgen.faults import Place
-from sheetgen.records.cells import angles_close, lengths_and_angles, overlapping
+from sheetgen.records.cells import LARGEST_RATIO, angles_close, elongation, lengths_and_angles, overlapping
 from sheetgen.records.lattices import IDEAL_RATIO, LATTICES, SHAPES, CellShape, Lattice
 from sheetgen.records.measures import STRUCTURE
 from sheetgen.records.model import Crystal, Site, Value
@@ -95,6 +95,11 @@ def check_room(crystal: Crystal) -> None:
         raise UnreadableError(
             "the angles alpha, beta and gamma cannot meet in a corner; expected each to be less than the sum of the"
             " others, and all three less than 360° in sum"
+        )
+    if (ratio := elongation(crystal)) > LARGEST_RATIO:
+        raise UnreadableError(
+            f"the longest edge of the cell is {ratio:.4g} times the shortest edge or diagonal; expected at most"
+            f" {LARGEST_RATIO} times. Check the cell constants and their units"
         )
     if clash := overlapping(crystal):
         one, other = (f"{site.element} at ({', '.join(f'{x:.4g}' for x in site.position)})" for site in clash)
