@@ -61,12 +61,13 @@ class Copies:
         self.units: dict[str, int] = {}
 
     def data(self) -> dict[str, Any]:
-        """What the page embeds: `numbers` maps an id to [digits, power of ten, value, uncertainty or 0, unit]."""
+        """What the page embeds: `numbers` maps an id to [digits with uncertainty in brackets, power of ten, unit]."""
         found = dict(self._numbers())
         return {
             "material": self.sheet.record.name,
             "slug": self.sheet.record.slug,
             "edition": self.sheet.data["edition"],
+            "symbols": self._symbols(),
             "units": [[unit, numbers.unit_text(unit), latex_unit(unit)] for unit in self.units],
             "numbers": found,
         }
@@ -74,7 +75,7 @@ class Copies:
     def _numbers(self) -> Iterator[tuple[str, list[Any]]]:
         for id, stated in self.sheet.data["inputs"].items():
             number = numbers.stated(stated["value"], stated.get("standard_uncertainty"))
-            yield f"input.{id}", self._parts(number, stated["value"], stated.get("standard_uncertainty"), stated["unit"])
+            yield f"input.{id}", self._parts(number, stated["unit"])
         for id in self.definitions:
             seen: dict[str, int] = {}
             for entry in self.sheet.entries(id):
@@ -87,16 +88,27 @@ class Copies:
                 if isinstance(entry, dict) and not isinstance(entry["value"], list):
                     yield f"specimen-{position}.{id}", self._entry(id, entry)
 
+    def _symbols(self) -> dict[str, str]:
+        """Symbols as sentences write them ('k_F') with the quantity that each stands for."""
+        plain = {_plain(definition.symbol): id for id, definition in self.definitions.items()}
+        return {symbol: id for symbol, id in plain.items() if words.is_symbol(symbol)}
+
     def _entry(self, id: str, entry: dict[str, Any]) -> list[Any]:
         value, uncertainty = self.preference.number(id, entry)
         number = numbers.printed(value, uncertainty, whole=entries.is_count(entry))
-        return self._parts(number, value, uncertainty, self.preference.of(id, entry["unit"]))
+        return self._parts(number, self.preference.of(id, entry["unit"]))
 
-    def _parts(self, number: numbers.Printed, value: float, uncertainty: float | None, unit: str) -> list[Any]:
+    def _parts(self, number: numbers.Printed, unit: str) -> list[Any]:
         index = self.units.setdefault(unit, len(self.units))
-        digits = number.mantissa.translate(_SIUNITX)
-        spread = float(f"{uncertainty:.4g}") if uncertainty else 0
-        return [digits, number.exponent, float(f"{value:.12g}"), spread, index]
+        return [number.mantissa.translate(_SIUNITX), number.exponent, index]
+
+
+_BRACED = re.compile(r"\\(?:mathrm|text)\s*\{([^{}]*)\}")
+
+
+def _plain(latex: str) -> str:
+    """A symbol without the marks of LaTeX: 'k_\\mathrm{F}' is k_F."""
+    return _BRACED.sub(r"\1", latex).replace(r"\lambda", "λ").replace(r"\omega", "ω")
 
 
 # --- citation --------------------------------------------------------------------------------------------------------

@@ -10,6 +10,7 @@ from markupsafe import Markup
 
 from . import numbers, words
 
+NOT_VALID = "not valid"  # the word of sheetgen.draws for an uncertainty that the draws refute
 AXES = ("temperature", "photon_energy", "edge", "specimen")
 
 
@@ -21,6 +22,7 @@ class Cell:
     standing: str
     unit: Markup = Markup("")
     anchor: str = ""
+    interval: Markup = Markup("")
 
 
 @dataclass(frozen=True)
@@ -32,6 +34,7 @@ class Line:
     title: str
     cell: Cell
     origin: str
+    recalled: bool = False
 
 
 @dataclass(frozen=True)
@@ -67,7 +70,25 @@ def cell(quantity: str, entry: dict[str, Any], preference: Preference) -> Cell:
     if isinstance(value, list):
         return Cell(_written_out(value, unit), entry["standing"])
     number = numbers.printed(*preference.number(quantity, entry), whole=is_count(entry))
-    return Cell(number.html, entry["standing"], numbers.unit(preference.of(quantity, unit)))
+    shown = numbers.unit(preference.of(quantity, unit))
+    return Cell(number.html, entry["standing"], shown, interval=interval(quantity, entry, preference))
+
+
+def interval(quantity: str, entry: dict[str, Any], preference: Preference, power: int = 0) -> Markup:
+    """The 95 % interval of the draws, where they refute the first-order uncertainty; in units of a power of ten."""
+    if entry.get("first_order") != NOT_VALID:
+        return Markup("")
+    unit, scale = entry["unit"], 10.0**-power
+    wanted = preference.of(quantity, unit)
+    low, high = (numbers.converted(end, None, unit, wanted)[0] * scale for end in entry["coverage_interval"])
+    width = abs(high - low) / 4  # about one standard uncertainty, which says how many digits an end is worth
+    ends = [numbers.printed(end, width or None) for end in (low, high)]
+    parts = [Markup(_without_bracket(end).html) for end in ends]
+    return Markup('<span class="interval">95{0}%: {1} to {2}</span>').format(numbers.NARROW, *parts)
+
+
+def _without_bracket(number: numbers.Printed) -> numbers.Printed:
+    return numbers.Printed(number.digits, "", number.exponent)
 
 
 def _written_out(values: list, unit: str) -> Markup:

@@ -47,6 +47,11 @@ class Evidence:
             "reason": found.reason if found.reason != found.ratio_name else "",
         }
 
+    def draws(self) -> dict[str, int]:
+        """How the check of the uncertainties by draws came out: word → numbers; empty where no draws were made."""
+        found = [entry.get("first_order") for id in self.definitions for entry in self.sheet.entries(id)]
+        return {word: found.count(word) for word in ("valid", "not valid", "too few draws") if word in found}
+
     def unit(self, found: Any) -> str:
         """The unit of both sides: the preferred one, unless what is compared is another quantity (κ is held as L)."""
         own = found.unit == self.handbook.registry[found.quantity].unit

@@ -8,7 +8,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from functools import cache
 from typing import Any
 
-from . import changes, citations, front, quantity, reference, words
+from . import changes, citations, front, quantity, reference, universal, words
 from .environment import Press, template_folder
 from .finding import finding
 from .gallery import Gallery
@@ -23,16 +23,18 @@ POLICY = (
 PAPERS = {"a4": "A4", "letter": "letter"}
 
 
-def lay_out(handbook: Any, figures: Mapping[str, Sequence[Any]]) -> Iterator[tuple[str, bytes]]:
+def lay_out(
+    handbook: Any, figures: Mapping[str, Sequence[Any]], *, paper: bool = False
+) -> Iterator[tuple[str, bytes]]:
     """Yield (relative path, content) for every page and all that pages load.
 
     Raises FaultsError, naming template:line, where a template cannot be rendered.
     """
-    layout, gallery = _Layout(handbook), Gallery(handbook)
+    layout, gallery = _Layout(handbook, paper), Gallery(handbook)
     yield from layout.assets()
     yield "index.html", layout.page("index.html", "", **front.context(handbook))
     for sheet in handbook.sheets:
-        yield f"materials/{sheet.record.slug}.html", layout.sheet(sheet, figures.get(sheet.record.slug, ()))
+        yield from layout.sheet(sheet, figures.get(sheet.record.slug, ()))
     for id in dict.fromkeys([*handbook.registry.published(), *handbook.registry.published("specimen")]):
         yield f"quantities/{id}.html", layout.page(
             "quantity.html", "../", plot=gallery.ranking(id), **quantity.context(id, handbook)
@@ -55,7 +57,7 @@ def _press() -> Press:
 class _Layout:
     """One run: the compiled templates and what every page shares."""
 
-    def __init__(self, handbook: Any):
+    def __init__(self, handbook: Any, paper: bool):
         self.handbook = handbook
         self.press = _press()
         self.known_sources = citations.all_sources(handbook)
@@ -64,6 +66,7 @@ class _Layout:
             "imprint": imprint,
             "language": words.language(imprint.language),
             "paper": PAPERS.get(imprint.paper.casefold(), "A4"),
+            "has_pdf": paper,
         }
 
     def assets(self) -> Iterator[tuple[str, bytes]]:
@@ -72,14 +75,17 @@ class _Layout:
         for path in sorted(template_folder().iterdir()):
             if path.name == "icon.svg" or path.suffix == ".js" or (path.suffix == ".css" and path.name != "style.css"):
                 yield f"style/{path.name}", path.read_bytes()
+        yield "style/universal.js", universal.tables()
         for font in sorted((template_folder() / "fonts").iterdir()):
             if font.suffix == ".woff2" or font.name == "OFL.txt":
                 yield f"style/fonts/{font.name}", font.read_bytes()
 
-    def sheet(self, sheet: Any, figures: Sequence[Any]) -> bytes:
-        """The sheet of one material."""
-        context = SheetPage(sheet, self.handbook, figures).context()
-        return self.page("sheet.html", "../", **context)
+    def sheet(self, sheet: Any, figures: Sequence[Any]) -> Iterator[tuple[str, bytes]]:
+        """The sheet of one material, and the numbers that its script copies and follows."""
+        found = SheetPage(sheet, self.handbook, figures)
+        path = f"materials/{sheet.record.slug}"
+        yield f"{path}.html", self.page("sheet.html", "../", **found.context())
+        yield f"{path}.js", found.script()
 
     def page(self, template: str, root: str, running_head: str = "", **context: Any) -> bytes:
         """One page; `root` leads from it to the top of the site. Its running head on paper is a CSS string."""

@@ -17,7 +17,7 @@ _WITH = "with uncertainty, source and standing against measurement"
 
 def embedded(data: dict[str, Any]) -> Markup:
     """JSON that can stand inside a script element whatever its texts say."""
-    text = json.dumps(data, ensure_ascii=False)
+    text = json.dumps(data, ensure_ascii=False, separators=(",", ":"))
     for sign, escape in _ESCAPES.items():
         text = text.replace(sign, escape)
     return Markup(text)
@@ -69,6 +69,7 @@ def _common(handbook: Any) -> dict[str, Any]:
         "version": imprint.edition,
         "inLanguage": imprint.language,
         "isAccessibleForFree": True,
+        "measurementTechnique": "free-electron model",
     } | licence
 
 
@@ -86,6 +87,5 @@ def _variable(definition: Any, entry: dict[str, Any]) -> dict[str, Any]:
     if unit := numbers.unit_text(entry["unit"]):
         found["unitText"] = unit.replace(numbers.NARROW, " ")
     if uncertainty := entry.get("standard_uncertainty"):
-        found["measurementTechnique"] = "free-electron model"
         found["description"] = f"standard uncertainty {uncertainty:.2g}"
     return found

@@ -11,6 +11,7 @@ from typing import Any
 from markupsafe import Markup
 
 from . import citations, copying, entries, hazards, metadata, numbers, words
+from .conditions import Conditions
 from .entries import Cell, Line
 from .evidence import Evidence
 
@@ -39,6 +40,7 @@ class Row:
     unit: Markup
     cells: tuple[Cell | None, ...]
     anchored: bool = True
+    recalled: bool = False
 
 
 @dataclass(frozen=True)
@@ -66,6 +68,7 @@ class Section:
 class Given:
     """One input as it is shown."""
 
+    id: str
     label: str
     value: Markup
     at: Markup
@@ -85,6 +88,7 @@ class SheetPage:
         self.specimen_names = tuple(specimen.name for specimen in self.record.specimens)
         self.definitions = _fitting(handbook.registry, self.record.electrons.dimension)
         self.evidence = Evidence(sheet, handbook, self.definitions, self.preference)
+        self.conditions = Conditions(sheet, handbook, self.definitions)
 
     def context(self) -> dict[str, Any]:
         """The names that the template uses."""
@@ -114,9 +118,18 @@ class SheetPage:
             "figures": [(figure, figure_size(figure.svg)) for figure in self.figures],
             "missing": self.missing(self.sheet.missing),
             "cited": self.cited(),
+            "conditions": self.conditions.context(),
+            "citation": copying.citation(self.record, self.handbook),
+            "draws": self.evidence.draws(),
             "json_ld": metadata.material(self.sheet, self.handbook, self.definitions),
             "running_head": words.css_string(f"{self.record.name} ({self.record.formula})"),
         }
+
+    def script(self) -> bytes:
+        """The script beside the page: one frozen object of what the page's tools need."""
+        copies = copying.Copies(self.sheet, self.handbook, self.definitions).data()
+        data = copies | {"conditions": self.conditions.embedded()}
+        return f'"use strict";\nconst SHEET = Object.freeze({metadata.embedded(data)});\n'.encode()
 
     # --- the answer
 
@@ -151,6 +164,7 @@ class SheetPage:
         number = numbers.stated(stated["value"], stated.get("standard_uncertainty"))
         at = {"temperature": stated["temperature"]} if stated.get("temperature") is not None else {}
         return Given(
+            id,
             words.input_words(id.partition("@")[0], self.specimen_names),
             numbers.with_unit(number, stated["unit"]),
             entries.where(at),
@@ -188,9 +202,9 @@ class SheetPage:
     def line(self, definition: Any, entry: dict[str, Any]) -> Line:
         """One quantity as it is printed."""
         shown = entries.cell(definition.id, entry, self.preference)
-        return Line(
-            definition.id, definition.symbol, definition.title, shown, entries.origin(entry, self.specimen_names)
-        )
+        origin = entries.origin(entry, self.specimen_names)
+        recalled = definition.scope == "material" and definition.id in self.sheet.recalled
+        return Line(definition.id, definition.symbol, definition.title, shown, origin, recalled)
 
     def sections(self) -> Iterator[Section]:
         """The sections of the sheet that hold at least one number."""
@@ -235,11 +249,19 @@ class SheetPage:
         pairs = [self.preference.number(definition.id, entry) if entry else None for entry in chosen]
         power, cells = numbers.column(pairs, whole)
         printed = tuple(
-            Cell(cell, entry["standing"], anchor=copying.anchor(definition.id, entry, repeat)) if entry else None
+            Cell(
+                cell,
+                entry["standing"],
+                anchor=copying.anchor(definition.id, entry, repeat),
+                interval=entries.interval(definition.id, entry, self.preference, power),
+            )
+            if entry
+            else None
             for cell, entry, (_, repeat) in zip(cells, chosen, columns, strict=True)
         )
         unit = numbers.unit(self.preference.of(definition.id, present[0]["unit"]))
-        return Row(definition.id, definition.symbol, definition.title, power, unit, printed, anchored)
+        recalled = definition.id in self.sheet.recalled
+        return Row(definition.id, definition.symbol, definition.title, power, unit, printed, anchored, recalled)
 
     # --- specimens, absences, sources
 

@@ -1,7 +1,7 @@
 """Universal functions as tables for the page: what a reader's own conditions need, the same for all materials.
 
 Each function of one variable is a Chebyshev series in the logarithm of that variable over the range in which no
-limiting law holds; outside, the script uses the limits. The film factor needs no interpolation: the page sums over
+limiting law holds; outside, the script uses the limits. The factors of a film need no interpolation: the page sums over
 the nodes that sheetgen.physics.films integrates with.
 """
 
@@ -18,6 +18,8 @@ from sheetgen.physics import bloch_grueneisen, debye, films, occupation
 # Relative error that the series add, as the page states it; a test holds it against the functions themselves.
 STATED_ERROR = 1e-5
 _DIGITS = 9
+# In the order of sheetgen.physics.films.
+FILM_NODES = ("cosine", "inverseSine", "outer", "inverseAzimuth", "inner")
 # Coefficients smaller than this add nothing to that.
 _NEGLIGIBLE = 3e-8
 
@@ -31,7 +33,9 @@ def tables() -> bytes:
         "chemicalPotential": _series(lambda t: occupation.chemical_potential_ratio(t) / (1 + t), 0.03, 10.0),
         "electronHeat": _series(lambda t: np.log(occupation.heat_capacity_ratio(t)), 0.02, 10.0),
     }
-    found = {**series, "film": _film()}
+    surface = dict(zip(("inverseCosine", "weight"), map(_short, films.polar_nodes()), strict=True))
+    film = dict(zip(FILM_NODES, map(_short, films.film_nodes()), strict=True))
+    found = {**series, "surface": surface, "film": film}
     text = json.dumps(found, separators=(",", ":"))
     return f'"use strict";\nconst UNIVERSAL = Object.freeze({text});\n'.encode()
 
@@ -47,10 +51,5 @@ def _series(function: Callable[[np.ndarray], np.ndarray], low: float, high: floa
     return {"from": low, "to": high, "series": [round(value, _DIGITS) for value in coefficients[: last + 1].tolist()]}
 
 
-def _film() -> dict:
-    """Nodes and weights of the double integral over a film, in the order of sheetgen.physics.films."""
-    names = ("cosine", "inverseSine", "outer", "inverseAzimuth", "inner")
-    return {
-        name: [float(f"{value:.{_DIGITS}g}") for value in nodes.tolist()]
-        for name, nodes in zip(names, films.film_nodes(), strict=True)
-    }
+def _short(nodes: np.ndarray) -> list[float]:
+    return [float(f"{value:.{_DIGITS}g}") for value in nodes.tolist()]

@@ -119,6 +119,11 @@ def symbols(text: str) -> Markup:
     return Markup(_SYMBOL.sub(r"<i>\1</i><sub>\2</sub>", str(Markup.escape(text))))
 
 
+def is_symbol(text: str) -> bool:
+    """Whether a text is one symbol of the kind that `symbols` sets, such as k_F."""
+    return _SYMBOL.fullmatch(text) is not None
+
+
 def sentence(text: str) -> str:
     """A phrase as a sentence of its own: capital and full stop."""
     return text[:1].upper() + text[1:] + ("" if text.endswith((".", "!", "?")) else ".")

@@ -49,7 +49,7 @@ def surface_factor(kappa: np.ndarray, specularity: np.ndarray) -> np.ndarray:
     thin films keep their relative accuracy.
     """
     kappa, specularity = np.broadcast_arrays(np.asarray(kappa, float), np.asarray(specularity, float))
-    inverse_cosines, weights = _polar_nodes()
+    inverse_cosines, weights = polar_nodes()
     freedom = _freedom(kappa[..., None] * inverse_cosines, specularity[..., None])
     return 1 / (freedom @ weights)
 
@@ -175,8 +175,8 @@ def _small_difference(exponent: np.ndarray) -> np.ndarray:
 
 
 @cache
-def _polar_nodes() -> tuple[np.ndarray, np.ndarray]:
-    """1/u and weights of (3/2) ∫₀¹ (1 − u²) … du by the trapezoidal rule in s, u = 1/(1 + e⁻ˢ)."""
+def polar_nodes() -> tuple[np.ndarray, np.ndarray]:
+    """What surface_factor sums over: 1/u and weights of (3/2) ∫₀¹ (1 − u²) … du by the trapezoidal rule in s, u = 1/(1 + e⁻ˢ)."""
     s = np.arange(-32.0, 14.0, _STEP)
     cosine = 1 / (1 + np.exp(-s))
     rest = 1 / (1 + np.exp(s))
