@@ -180,6 +180,11 @@ def press_command(materials: Path, into: Path, draws: int | None, as_json: bool)
     help="Also a fault: a value without a source or from memory, and a record not reviewed or reviewed too long ago.",
 )
 @click.option(
+    "--untrusted",
+    is_flag=True,
+    help="The records are strangers': run no code of their folder, own quantities included.",
+)
+@click.option(
     "--site",
     metavar="SITE",
     type=click.Path(path_type=Path),
@@ -193,7 +198,9 @@ def press_command(materials: Path, into: Path, draws: int | None, as_json: bool)
 )
 @as_json
 @with_traceback
-def proof_command(materials: Path, strict: bool, site: Path | None, sarif: Path | None, as_json: bool) -> int:
+def proof_command(
+    materials: Path, strict: bool, untrusted: bool, site: Path | None, sarif: Path | None, as_json: bool
+) -> int:
     """Read and derive everything, list what is at fault and what to know, publish nothing."""
     if site is not None:
         return _proof_of_site(site, sarif, as_json)
@@ -202,7 +209,8 @@ def proof_command(materials: Path, strict: bool, site: Path | None, sarif: Path 
     try:
         with ProgressLine() as progress:
             progress("reading records", 0, 0)
-            handbook = Handbook.load(_standing(materials))
+            load = Handbook.load_untrusted if untrusted else Handbook.load
+            handbook = load(_standing(materials))
             if strict:
                 handbook.require_strict()
     except FaultsError as error:

@@ -4,18 +4,19 @@ from __future__ import annotations
 
 import datetime
 from collections.abc import Iterable, Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cached_property
 from pathlib import Path
 from typing import Any
 
 import numpy as np
 
-from sheetgen.faults import Fault, FaultLog, FaultsError, did_you_mean
+from sheetgen.faults import Fault, FaultLog, FaultsError, Place, did_you_mean
 from sheetgen.lookup import NotFoundError, column, frame
 from sheetgen.quantities import Registry, registry
 from sheetgen.quantities.batch import Batch, material_batch, specimen_batch
 from sheetgen.records import Folder, Imprint, Record, Source, read_folder
+from sheetgen.records.imprint import THRESHOLDS
 from sheetgen.sheet import Derivation, Row, Sheet
 from sheetgen.standing.crosschecks import check_names
 from sheetgen.standing.grading import check_thresholds
@@ -47,7 +48,15 @@ class Handbook:
         With `draws`, each number that carries an uncertainty also gets a 95 % coverage interval from that many
         draws at least, and the word on whether its first-order uncertainty is valid.
         """
-        folder = read_folder(Path(path))
+        return cls._derived(read_folder(Path(path)), draws, seed)
+
+    @classmethod
+    def load_untrusted(cls, path: str | Path) -> Handbook:
+        """Read and derive a folder of strangers: what it names as own quantities is left out, and a remark says so."""
+        return cls._derived(_without_code(read_folder(Path(path))))
+
+    @classmethod
+    def _derived(cls, folder: Folder, draws: int = 0, seed: int = SEED) -> Handbook:
         declared = registry_of(folder.imprint)
         log = FaultLog()
         check_thresholds(folder.imprint, declared.assumptions, log)
@@ -126,6 +135,21 @@ class Handbook:
             if id not in known:
                 raise NotFoundError(f"The handbook has no quantity '{id}'.{did_you_mean(id, known)}")
         return frame(self.sheets, ids)
+
+
+def _without_code(folder: Folder) -> Folder:
+    """The folder as if its imprint named no own quantities; bounds of own assumptions go with them."""
+    imprint = folder.imprint
+    if imprint.own_quantities is None:
+        return folder
+    ours = {*THRESHOLDS, *(assumption.id for assumption in registry().assumptions)}
+    thresholds = {name: bound for name, bound in imprint.thresholds.items() if name in ours}
+    message = "own quantities are not trusted here: the file is not run, and what it declares is not derived."
+    return replace(
+        folder,
+        imprint=replace(imprint, own_quantities=None, thresholds=thresholds),
+        remarks=(*folder.remarks, Fault(Place(str(imprint.own_quantities)), message, "remark")),
+    )
 
 
 def registry_of(imprint: Imprint) -> Registry:
