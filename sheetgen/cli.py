@@ -119,7 +119,9 @@ def commands() -> None:
     """Turn reviewed records of conducting materials into a reference handbook."""
 
 
-@commands.command("press", cls=Command, examples=["sheetgen press materials --into site"])
+@commands.command(
+    "press", cls=Command, examples=["sheetgen press materials --into site", "sheetgen press --pdf --into site"]
+)
 @materials
 @click.option(
     "--into",
@@ -134,15 +136,16 @@ def commands() -> None:
     type=click.IntRange(100, 10_000_000),
     help="Check each uncertainty by N draws, and state 95 % coverage intervals.",
 )
+@click.option("--pdf", is_flag=True, help="Also set each sheet and the whole handbook as PDF (needs the extra 'pdf').")
 @as_json
 @with_traceback
-def press_command(materials: Path, into: Path, draws: int | None, as_json: bool) -> int:
+def press_command(materials: Path, into: Path, draws: int | None, pdf: bool, as_json: bool) -> int:
     """Derive every sheet and publish the site: the whole new one, or at any fault the old one as it stood."""
     from sheetgen.press import FolderRefusedError, press
 
     try:
         with ProgressLine() as progress:
-            pressed = press(_standing(materials), into, progress, draws=draws or 0)
+            pressed = press(_standing(materials), into, progress, draws=draws or 0, paper=pdf)
     except FaultsError as error:
         return _at_fault(error.faults, as_json, f"Nothing was published; {into} stands as it stood.")
     except FolderRefusedError as error:

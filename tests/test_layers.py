@@ -26,6 +26,7 @@ LAYERS = [
     {"errata"},
     {"figures"},
     {"pages"},
+    {"paper"},
     {"press", "quote", "terminal", "drafting", "errata_lines", "sarif"},
     {"galley"},
     {"cli"},

@@ -37,27 +37,35 @@ def press(
     disk: Disk | None = None,
     draws: int = 0,
     draw: Callable[[Sheet, Handbook], list[Figure]] | None = None,
+    paper: bool = False,
 ) -> Pressed:
     """Derive the handbook of the folder and publish it; a site that needs no change is left untouched.
 
     `progress` is called with the name of a step, how much of it is done and how much there is (0: not known).
     With `draws`, each number also gets a coverage interval from that many. `draw` gives the figures of a sheet in
-    the place of `draw_all`, for one who keeps those that did not change.
+    the place of `draw_all`, for one who keeps those that did not change. With `paper`, the site also holds each sheet
+    and the whole handbook as PDF.
     Raises FaultsError, FolderRefusedError or MachineError; the site that stood before then still stands.
     """
     from sheetgen.documents import documents
     from sheetgen.handbook import Handbook
     from sheetgen.pages import lay_out
+    from sheetgen.paper import paper_edition, require
 
+    if paper:
+        require()  # before the work, not after it
     inputs = fingerprints(folder)
     progress("reading records", 0, 0)
     handbook = Handbook.load(folder, draws=draws)
     if earlier := handbook.imprint.previous_edition:
         inputs[earlier.relative_to(folder).as_posix()] = digest(earlier.read_bytes())
     figures = _figures(handbook, progress, draw)
-    files = chain(documents(handbook, figures), lay_out(handbook, figures))
+    files = chain(documents(handbook, figures), lay_out(handbook, figures, paper=paper))
+    files = _counted(files, progress)
+    if paper:
+        files = chain(files, paper_edition(handbook, figures, progress))
     report = publish(
-        _counted(files, progress),
+        files,
         into,
         inputs,
         disk=disk,
