@@ -34,7 +34,8 @@ O1 O2- 0.30479(10) 0.30479(10) 0 1.0
 
 VALUES = (
     "3.6149(2) Å", "1.676(5) µΩ cm", "293 K", "20 °C", "1.03(2)e19 cm^-3", "1.03(2)×10^19 1/cm^3",
-    "0.695(10) mJ/(mol K²)", "3.6149 ± 0.0002 Å", "(1.2 ± 0.1)e-8 Ω m", "-5.1e-11 m³/C", "90°", "1,5 nm", "1e999 m", "4.2 eV", "40(2) nm",
+    "0.695(10) mJ/(mol K²)", "3.6149 ± 0.0002 Å", "(1.2 ± 0.1)e-8 Ω m", "-5.1e-11 m³/C", "90°",
+    "1,5 nm", "1e999 m", "4.2 eV", "40(2) nm",
 )  # fmt: skip
 UNITS = (
     "µΩ cm", "mJ/(mol K^2)", "1/(eV nm^3)", "Ω/sq", "m_e", "angstrom^3", "rad/(s T)", "W/(m·K)", "cm²/(V s)",
@@ -52,9 +53,11 @@ WORDS = (
     "|", ">", "'", '"', "%", "@", "---", "...", "<<", "? ", "nan", ".inf", "~", "true", "null", "×10^", "±", "µΩ cm",
     "Å", "°", "²", "⁻¹", "/sq", "**", "^9", "name: ", "formula: ", "structure:", "lattice: ", "space group: ", "atoms:",
     "a: ", "c/a: ", "electrons:", "valence: ", "density: ", "dimension: 2", "measured:", "resistivity: ", "at: ",
-    "from: ", "specimens:", "thickness: ", "cautions:", "hazard: ", "review:", "notes: ", "cif: ", "@article{", "@string{",
+    "from: ", "specimens:", "thickness: ", "cautions:", "hazard: ", "review:", "notes: ", "cif: ", "@article{",
+    "@string{",
     "@comment{", "author = ", "doi = ", "url = ", "\\emph{", "$_2$", "loop_", "data_", "_cell_length_a",
-    "_atom_site_label", "save_", ";\n", "temperatures: ", "thresholds:", "units:", "own quantities: ", "```", "javascript:", "<script>",
+    "_atom_site_label", "save_", ";\n", "temperatures: ", "thresholds:", "units:", "own quantities: ", "```",
+    "javascript:", "<script>",
     "onerror=", "<svg/onload=", "](", "![", "&#x6a;", "| --- |", "fcc", "hcp", "rhombohedral", "K", "eV", "nm", "e19",
 )  # fmt: skip
 

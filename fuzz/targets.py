@@ -1,4 +1,4 @@
-"""What strangers write, given to the readers as bytes: a target takes any input, and ends well or finds an error of ours.
+"""What strangers write, given to the readers as bytes: a target takes any input and ends well, or finds an error.
 
 A target returns where the input was read, or refused with a fault that has a place and a message of one line. Whatever
 else happens (an exception, a warning, a number that is not finite, markup on a page that nobody may put there) is an

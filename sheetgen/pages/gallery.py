@@ -54,8 +54,8 @@ class Gallery:
     def plates(self) -> list[Plate]:
         """The figures of the handbook for a page at the top of the site, their links alive."""
         return [
-            Plate(figure.id, figure.title, figure.description, inline(figure.svg, ""), *_paths("handbook", figure.id, ""))
-            for figure in self.of_handbook
+            Plate(drawn.id, drawn.title, drawn.description, inline(drawn.svg, ""), *_paths("handbook", drawn.id, ""))
+            for drawn in self.of_handbook
         ]
 
     def ranking(self, id: str) -> Plate | None:

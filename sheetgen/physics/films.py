@@ -176,7 +176,7 @@ def _small_difference(exponent: np.ndarray) -> np.ndarray:
 
 @cache
 def polar_nodes() -> tuple[np.ndarray, np.ndarray]:
-    """What surface_factor sums over: 1/u and weights of (3/2) ∫₀¹ (1 − u²) … du by the trapezoidal rule in s, u = 1/(1 + e⁻ˢ)."""
+    """What surface_factor sums over: 1/u and weights of (3/2) ∫₀¹ (1 − u²) … du, trapezoidal in s, u = 1/(1 + e⁻ˢ)."""
     s = np.arange(-32.0, 14.0, _STEP)
     cosine = 1 / (1 + np.exp(-s))
     rest = 1 / (1 + np.exp(s))
@@ -187,7 +187,7 @@ def polar_nodes() -> tuple[np.ndarray, np.ndarray]:
 
 @cache
 def film_nodes() -> tuple[np.ndarray, np.ndarray, np.ndarray, np.ndarray, np.ndarray]:
-    """What film_factor sums over: w, 1/√(1−w²) and weights in s, x = ln(1 + eˢ), w = tanh x; cosh y and weights in y."""
+    """What film_factor sums over: w, 1/√(1−w²), weights in s, x = ln(1 + eˢ), w = tanh x; cosh y, weights in y."""
     s = np.arange(-9.0, 12.5, _STEP)
     growth = 1 + np.exp(s)
     inverse_sine = (growth + 1 / growth) / 2
