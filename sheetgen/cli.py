@@ -349,7 +349,7 @@ def errata_command(old: str, new: str, materials: Path, as_json: bool) -> int:
 @click.option(
     "--port",
     metavar="N",
-    type=click.IntRange(0, 65535),
+    type=int,
     default=PORT,
     help=f"The port on this machine; 0 takes a free one [default: {PORT}].",
 )
@@ -357,6 +357,9 @@ def errata_command(old: str, new: str, materials: Path, as_json: bool) -> int:
 def galley_command(materials: Path, port: int) -> int:
     """Serve the handbook on this machine only, press it anew as records are saved, until Ctrl-C."""
     from sheetgen.galley import run
+
+    if not 0 <= port <= 65535:
+        raise WrongWordError(f"There is no port {port}; choose one from 1 to 65535 with --port, or 0 for a free one.")
 
     def opened(address: str) -> None:
         progress.clear()
