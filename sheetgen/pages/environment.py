@@ -30,11 +30,12 @@ class Press:
     """Renders templates; one for each run, since compiling costs more than rendering."""
 
     def __init__(self, own_folders: Iterable[Path] = ()):
-        """Templates in `own_folders` come before those of the program, under the same names."""
+        """Templates in `own_folders` come before those of the program, which they reach as 'original/…'."""
         folders = [str(folder) for folder in (*own_folders, template_folder())]
         self.folders = tuple(folders)
+        originals = jinja2.PrefixLoader({"original": jinja2.FileSystemLoader(str(template_folder()))})
         self.environment = jinja2.Environment(
-            loader=jinja2.FileSystemLoader(folders),
+            loader=jinja2.ChoiceLoader([jinja2.FileSystemLoader(folders), originals]),
             autoescape=True,
             undefined=jinja2.StrictUndefined,
             trim_blocks=True,

@@ -6,9 +6,10 @@ import base64
 import hashlib
 from collections.abc import Iterator, Mapping, Sequence
 from functools import cache
+from pathlib import Path
 from typing import Any
 
-from . import changes, citations, front, quantity, reference, universal, words
+from . import about, changes, citations, front, own_look, quantity, reference, universal, words
 from .environment import Press, template_folder
 from .finding import finding
 from .gallery import Gallery
@@ -45,13 +46,16 @@ def lay_out(
     since = changes.Changes(handbook)
     yield changes.PAGE, layout.page("changes.html", "", **since.context())
     yield from since.feed()
+    yield "about.html", layout.page("about.html", "", **about.about(handbook))
+    yield "review.html", layout.page("review.html", "", **about.review(handbook))
+    yield from own_look.pages(handbook, layout.page)
     yield from finding(handbook, figures, gallery, layout.page)
 
 
 @cache
-def _press() -> Press:
-    """The compiled templates, once a process."""
-    return Press()
+def _press(own: Path | None) -> Press:
+    """The compiled templates, once a process; those of a group's own folder come first."""
+    return Press([own] if own else [])
 
 
 class _Layout:
@@ -59,26 +63,39 @@ class _Layout:
 
     def __init__(self, handbook: Any, paper: bool):
         self.handbook = handbook
-        self.press = _press()
-        self.known_sources = citations.all_sources(handbook)
         imprint = handbook.imprint
+        self.press = _press(imprint.templates)
+        self.known_sources = citations.all_sources(handbook)
         self.shared = {
             "imprint": imprint,
             "language": words.language(imprint.language),
             "paper": PAPERS.get(imprint.paper.casefold(), "A4"),
             "has_pdf": paper,
+            "logo": imprint.look.logo[0] if imprint.look.logo else None,
+            "own_pages": imprint.pages,
         }
 
     def assets(self) -> Iterator[tuple[str, bytes]]:
         """Style sheet (for the imprint's paper), icon, script and fonts."""
-        yield "style/handbook.css", self.press.render("style.css", **self.shared)
-        for path in sorted(template_folder().iterdir()):
-            if path.name == "icon.svg" or path.suffix == ".js" or (path.suffix == ".css" and path.name != "style.css"):
-                yield f"style/{path.name}", path.read_bytes()
+        look = self.handbook.imprint.look
+        yield "style/handbook.css", self.press.render("style.css", **self.shared) + own_look.colours(look)
+        for name, path in sorted(self._files().items()):
+            yield f"style/{name}", path.read_bytes()
+        if look.logo:
+            yield f"style/{look.logo[0]}", look.logo[1]
         yield "style/universal.js", universal.tables()
         for font in sorted((template_folder() / "fonts").iterdir()):
             if font.suffix == ".woff2" or font.name == "OFL.txt":
                 yield f"style/fonts/{font.name}", font.read_bytes()
+
+    def _files(self) -> dict[str, Path]:
+        """Name → file of every script and style sheet that stands as it is, and the icon; a group's own come first."""
+        found: dict[str, Path] = {}
+        for folder in filter(None, (template_folder(), self.handbook.imprint.templates)):
+            for path in folder.iterdir():
+                if path.name == "icon.svg" or (path.suffix in (".js", ".css") and path.name != "style.css"):
+                    found[path.name] = path
+        return found
 
     def sheet(self, sheet: Any, figures: Sequence[Any]) -> Iterator[tuple[str, bytes]]:
         """The sheet of one material, and the numbers that its script copies and follows."""

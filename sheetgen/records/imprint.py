@@ -8,6 +8,7 @@ from contextlib import suppress
 from pathlib import Path
 
 from sheetgen.faults import Place, did_you_mean
+from sheetgen.records.look import read_look, read_pages, read_subfolder
 from sheetgen.records.model import Imprint
 from sheetgen.records.nodes import Listing, Node, Scalar, Table, found
 from sheetgen.records.spelling import written_key
@@ -34,6 +35,9 @@ _KEYS = (
     "remarks_as_faults",
     "review_interval",
     "own_quantities",
+    "look",
+    "templates",
+    "pages",
 )
 _LONGEST_TEXT = 300
 _LANGUAGE = re.compile(r"[a-z]{2,3}(?:-[A-Za-z0-9]{2,8})*")
@@ -80,6 +84,9 @@ def read_imprint(root: Table, path: Path, reader: Reader) -> Imprint:
         previous_edition=_previous_edition(root.node("previous_edition"), path.parent, reader),
         remarks_as_faults=_remarks_as_faults(root.node("remarks_as_faults"), reader),
         review_interval=_review_interval(root.node("review_interval"), reader),
+        look=read_look(root.node("look"), path.parent, reader),
+        templates=read_subfolder(root.node("templates"), "templates", path.parent, reader),
+        pages=read_pages(root.node("pages"), path.parent, reader),
     )
 
 

@@ -150,11 +150,30 @@ class Record:
 
 
 @dataclass(frozen=True, slots=True)
+class Look:
+    """Colours by name for the light and for the dark ("#0d3f6b"), and the logo as (file name, content)."""
+
+    light: dict[str, str] = field(default_factory=dict)
+    dark: dict[str, str] = field(default_factory=dict)
+    logo: tuple[str, bytes] | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class OwnPage:
+    """A page in Markdown: its heading, and what follows it."""
+
+    slug: str
+    title: str
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
 class Imprint:
     """Who publishes the handbook and how: handbook.yaml. Temperatures in K, the reference temperature first.
 
     `date` is the day of the edition (ISO 8601) or empty, `previous_edition` the data file of the one before it.
     `remarks_as_faults` names the cross-checks that stop a press, `review_interval` counts months.
+    `templates` is the folder of the group's own ones, `pages` are its own pages.
     """
 
     title: str
@@ -175,6 +194,9 @@ class Imprint:
     previous_edition: Path | None = None
     remarks_as_faults: tuple[str, ...] = ()
     review_interval: int | None = None
+    look: Look = field(default_factory=Look)
+    templates: Path | None = None
+    pages: tuple[OwnPage, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -35,7 +35,7 @@ def _review(record: Record, imprint: Imprint, today: datetime.date) -> Iterator[
     elif imprint.review_interval is not None:
         reference = datetime.date.fromisoformat(imprint.date) if imprint.date else today
         reviewed = datetime.date.fromisoformat(review.date)
-        if (months := _months(reviewed, reference)) > imprint.review_interval:
+        if (months := months_between(reviewed, reference)) > imprint.review_interval:
             yield Fault(
                 record.place,
                 f"the review of {review.date} is {months} months old, the imprint allows {imprint.review_interval}. "
@@ -43,6 +43,6 @@ def _review(record: Record, imprint: Imprint, today: datetime.date) -> Iterator[
             )
 
 
-def _months(start: datetime.date, end: datetime.date) -> int:
+def months_between(start: datetime.date, end: datetime.date) -> int:
     """Whole months from one day to another."""
     return (end.year - start.year) * 12 + end.month - start.month - (end.day < start.day)
