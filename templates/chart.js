@@ -60,9 +60,9 @@ handbook.chart = (() => {
     ];
     const lines = points.map((curve, order) => draw("path", { class: `curve curve-${order + 1}`,
       d: curve.map(([a, b], step) => `${step ? "L" : "M"}${across(a).toFixed(1)} ${up(b).toFixed(1)}`).join("") }));
-    const said = `${names[1]} against ${names[0]}${logarithmic ? " on logarithmic axes" : ""}: ${curves.map(({ name }, order) => {
+    const said = `${names[1]} against ${names[0]}${logarithmic ? " on logarithmic axes" : ""}: ${curves.flatMap(({ name }, order) => {
       const last = points[order].at(-1);
-      return `${name} reaches ${label(Number(last[1].toPrecision(3)))} at ${label(Number(last[0].toPrecision(3)))}`;
+      return !last ? [] : `${name} reaches ${label(Number(last[1].toPrecision(3)))} at ${label(Number(last[0].toPrecision(3)))}`;
     }).join("; ")}.`;
     return draw("svg", { class: "chart", viewBox: `0 0 ${WIDTH} ${HEIGHT}`, role: "img", "aria-labelledby": `${id}-title ${id}-said` },
       draw("title", { id: `${id}-title` }, title), draw("desc", { id: `${id}-said` }, said), ...axes, ...lines);

@@ -81,8 +81,8 @@
     const power = whole ? 0 : handbook.columnPower(present.map((one) => one[0] * factor));
     const over = make("td", { class: "unit" }, power ? handbook.typeset(`10${handbook.raised(power)}${handbook.NARROW}`) : null, handbook.typeset(unit));
     return make("tr", {},
-      make("th", { scope: "row" }, symbol ? make("span", { class: "set" }, handbook.symbol(symbol)) : null, " ",
-        make("a", { href: `quantities/${id}.html`, text: title }), words && points.length > 1 ? `, ${words}` : null),
+      make("th", { scope: "row" }, make("span", { class: "named" }, make("span", { class: "set" }, handbook.symbol(symbol)),
+        make("span", {}, make("a", { href: `quantities/${id}.html`, text: title }), words && points.length > 1 ? `, ${words}` : null))),
       over, ...stated.map((one, order) => numberCell(one, ratios[order], order, id, factor * 10 ** -power, whole)));
   }
 

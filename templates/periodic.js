@@ -20,20 +20,19 @@
     make("optgroup", { label: title }, ...ids.flatMap((id) => quantities[id].points.map(([point, words]) =>
       make("option", { value: id + point, text: quantities[id].title + (words && quantities[id].points.length > 1 ? `, ${words}` : "") }))))));
 
-  /* Steps of equal width between the smallest and the largest, logarithmic where those differ by more than thirtyfold. */
+  /* Steps that hold equally many materials: equal values share a step, and a few far ones do not take the whole scale. */
   function scale(values) {
-    const [low, high] = [Math.min(...values), Math.max(...values)];
-    const logarithmic = low > 0 && high / low > 30;
-    const [shape, back] = logarithmic ? [Math.log, Math.exp] : [Number, Number];
-    const width = (shape(high) - shape(low)) / STEPS;
-    return {
-      logarithmic,
-      step: (value) => (width ? Math.min(STEPS, 1 + Math.floor((shape(value) - shape(low)) / width)) : 1),
-      bounds: Array.from({ length: width ? STEPS : 1 }, (_, step) => [back(shape(low) + step * width), back(shape(low) + (step + 1) * width)]),
-    };
+    const sorted = [...values].sort((a, b) => a - b);
+    const stepOf = (value) => Math.floor((sorted.indexOf(value) * STEPS) / sorted.length) + 1;
+    const bounds = Array.from({ length: STEPS }, (_, step) => sorted.filter((value) => stepOf(value) === step + 1));
+    return { stepOf, bounds: bounds.map((some) => [some[0], some.at(-1)]) };
   }
 
-  const brief = (value) => handbook.words(handbook.printed(Number(value.toPrecision(3))));
+  /* Three digits, the last one too where it is a nought. */
+  const brief = (value) => {
+    const digits = value.toPrecision(3);
+    return /^-?[\d.]+$/.test(digits) ? digits.replace("-", "\u2212") : handbook.words(handbook.printed(Number(digits)));
+  };
 
   function clear() {
     for (const place of places) {
@@ -66,19 +65,19 @@
     const [, unit, factor] = quantities[idOf(key)].units[0];
     const numbers = places.map((place) => column.value[place.dataset.row]);
     const stated = numbers.filter((value) => value !== null).map((value) => value * factor);
-    const { step, bounds, logarithmic } = scale(stated);
+    const { stepOf, bounds } = scale(stated);
     const power = handbook.columnPower(stated), ten = 10 ** -power;
     places.forEach((place, index) => {
       if (numbers[index] === null) return place.classList.add("without");
       const value = numbers[index] * factor;
-      place.classList.add(`step-${step(value)}`);
+      place.classList.add(`step-${stepOf(value)}`);
       place.querySelector(".shade-value").append(handbook.typeset(brief(value * ten)));
       return undefined;
     });
     const over = [power ? `10${handbook.raised(power)}` : "", unit].filter(Boolean).join(NARROW);
-    caption.append(quantities[idOf(key)].title, over ? ", in " : "", handbook.typeset(over), logarithmic ? ". Steps of equal ratio." : ". Steps of equal width.");
-    legend.append(...bounds.map(([low, high], index) => make("li", {}, make("span", { class: `swatch step-${index + 1}` }),
-      handbook.typeset(`${brief(low * ten)} to ${brief(high * ten)}`))));
+    caption.append(quantities[idOf(key)].title, over ? ", in " : "", handbook.typeset(over), ". Each step holds equally many materials.");
+    legend.append(...bounds.flatMap(([low, high], index) => (low === undefined ? [] : [make("li", {}, make("span", { class: `swatch step-${index + 1}` }),
+      handbook.typeset(low === high ? brief(low * ten) : `${brief(low * ten)} to ${brief(high * ten)}`))])));
   }
 
   function byStanding(key, column) {

@@ -40,11 +40,12 @@
     return best;
   }
 
-  /* The sum over all words, 0 where one of them fits nowhere; a title without further words comes first. */
+  /* The mean over all words, 0 where one of them fits nowhere; a whole symbol and a title without further words come first. */
   function score(entry, words) {
     const fits = words.map((word) => fit(entry, word));
     if (!words.length || fits.some((one) => !one)) return 0;
-    return (fits.reduce((sum, one) => sum + one, 0) / words.length) * WEIGHT[entry.kind] + 1 / (1 + entry.own.length);
+    const whole = entry.sign && entry.sign === words.join("") ? 8 : 0;
+    return whole + (fits.reduce((sum, one) => sum + one, 0) / words.length) * WEIGHT[entry.kind] + 1 / (1 + entry.own.length);
   }
 
   const ranked = (some, words, least = 0) => some.map((entry) => ({ entry, points: score(entry, words) })).filter(({ points }) => points > least)

@@ -63,6 +63,7 @@
   async function show(next, remember = true) {
     view = next;
     const own = ++turn;
+    table.setAttribute("aria-busy", "true");
     if (remember) handbook.remember(parameters());
     setTools();
     setHeads();
@@ -71,6 +72,7 @@
       [materials] = await Promise.all([handbook.table("materials"), ...keys.map((key) => handbook.table(`columns/${idOf(key)}`))]);
     } catch (error) {
       output.textContent = error.message;
+      table.removeAttribute("aria-busy");
       return;
     }
     if (own !== turn) return; // the reader has asked for something else since
@@ -81,6 +83,7 @@
     setPager();
     const all = materials.slug.length;
     output.textContent = shown.length === all ? `${all} materials` : `${shown.length} of ${all} materials`;
+    table.removeAttribute("aria-busy");
   }
 
   const textOf = (slug, row) => plain([materials.name[row], materials.formula[row], materials.lattice[row], materials.elements[row],

@@ -114,7 +114,7 @@ globalThis.handbook = (() => {
   /* A symbol such as E_F: the letter slanted, its index below the line. */
   function symbol(text) {
     const pieces = document.createDocumentFragment();
-    for (const piece of text.split(/(_[\p{L}\d,]+|\^\S)/u)) {
+    for (const piece of text.split(/(_[^\s_^/()]+|\^\S)/u)) {
       if (piece.startsWith("_")) pieces.append(element("sub", { text: piece.slice(1) }));
       else if (piece.startsWith("^")) pieces.append(element("sup", { text: piece.slice(1) }));
       else if (piece) pieces.append(element("i", { text: piece }));

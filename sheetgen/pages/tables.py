@@ -62,19 +62,19 @@ class Tables:
         """All numbers of one material by quantity and point, and the curves of its figures."""
         stated: dict[str, dict[str, list]] = {}
         for id in self.columns:
-            for point, entry in self._entries(sheet, self.handbook.registry.definitions_of(id)[0]):
+            for point, entry in self.stated(sheet, self.handbook.registry.definitions_of(id)[0]):
                 stated.setdefault(id, {}).setdefault(point, _number(entry))
         return {"quantities": stated, "curves": curves(figures)}
 
     def _column(self, definition: Any) -> dict[str, dict[str, Any]]:
         found: dict[str, dict[int, dict]] = {}
         for row, sheet in enumerate(self.handbook.sheets):
-            for point, entry in self._entries(sheet, definition):
+            for point, entry in self.stated(sheet, definition):
                 found.setdefault(point, {}).setdefault(row, entry)
         return {point: _packed(by_row, len(self.handbook.sheets)) for point, by_row in found.items()}
 
-    def _entries(self, sheet: Any, definition: Any) -> Iterator[tuple[str, dict]]:
-        """The entries that have a place in the column, with their points.
+    def stated(self, sheet: Any, definition: Any) -> Iterator[tuple[str, dict]]:
+        """(point, entry) of the entries that have a place in the column of a quantity.
 
         Two dimensions may state the same quantity in another unit, which has none.
         """
@@ -139,7 +139,9 @@ def _packed(by_row: dict[int, dict], rows: int) -> dict[str, Any]:
     listed = [by_row.get(row) for row in range(rows)]
     spreads = [entry.get("standard_uncertainty") if entry else None for entry in listed]
     packed: dict[str, Any] = {
-        "value": [short(entry["value"], spread) if entry else None for entry, spread in zip(listed, spreads)],
+        "value": [
+            short(entry["value"], spread) if entry else None for entry, spread in zip(listed, spreads, strict=True)
+        ],
         "standing": "".join(order[entry["standing"]] if entry else ABSENT for entry in listed),
     }
     if any(spread is not None for spread in spreads):
@@ -150,17 +152,17 @@ def _packed(by_row: dict[int, dict], rows: int) -> dict[str, Any]:
 
 
 def short(value: float, spread: float | None = None) -> float | int:
-    """A number without the digits that mean nothing: two beyond those of its uncertainty, nine where it has none."""
+    """A number without the digits that mean nothing: five beyond those of its uncertainty, nine where it has none."""
     if not value or (isinstance(value, int) and not spread):
         return value
     digits = 9
     if spread:
-        digits = min(15, max(6, math.floor(math.log10(abs(value))) - math.floor(math.log10(spread)) + 4))
+        digits = min(17, max(9, math.floor(math.log10(abs(value))) - math.floor(math.log10(spread)) + 7))
     rounded = float(f"{value:.{digits}g}")
     return int(rounded) if rounded.is_integer() and abs(rounded) < 1e9 else rounded
 
 
-# --- one material beside others ------------------------------------------------------------------------------------------
+# --- one material beside others --------------------------------------------------------------------------------
 
 # Figures whose curves can be laid over each other, with the series that is taken from each.
 CURVES = {"parabola": "all states", "density-of-states": "all states", "resistivity": "Bloch–Grüneisen"}
