@@ -319,7 +319,6 @@
     follow();
   }
 
-  form.addEventListener("submit", (event) => event.preventDefault());
   form.addEventListener("input", (event) => {
     const slider = sliders.find((one) => one === event.target || one.dataset.for === event.target.id);
     if (slider === event.target) {

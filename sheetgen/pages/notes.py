@@ -9,7 +9,7 @@ from markupsafe import Markup
 
 _TAGS = frozenset(
     """p br hr em strong b i code pre blockquote ul ol li dl dt dd a sup sub table thead tbody tr th td
-    h3 h4 h5 h6 abbr del ins small""".split()  # noqa: SIM905, a list of words reads better as words
+    h2 h3 h4 h5 h6 abbr del ins small""".split()  # noqa: SIM905, a list of words reads better as words
 )
 _ATTRIBUTES = {"a": {"href", "title"}, "abbr": {"title"}, "ol": {"start"}}
 # No slash at the start: such a link leads to another host, or to the root of a disk.

@@ -11,6 +11,7 @@ _BRITISH = {
     "centered": "centred",
     "neighbor": "neighbour",
     "color": "colour",
+    "colors": "colours",
     "gray": "grey",
 }
 _AMERICAN = {british: american for american, british in _BRITISH.items()}
