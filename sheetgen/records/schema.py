@@ -22,6 +22,7 @@ SCHEMA_ID = "urn:sheetgen:record"
 DIALECT = "https://json-schema.org/draft/2020-12/schema"
 
 ELEMENT_PATTERN = "^[A-Z][a-z]?$"
+NAME_PATTERN = r"^\s*[^\s=+@-]"  # a cell that begins with one of these is a formula to a spreadsheet
 HAZARD_PATTERN = r"^(EUH\d{3}[A-Z]?|H[234]\d{2}[A-Za-z]{0,2})(\s*\+\s*(EUH\d{3}[A-Z]?|H[234]\d{2}[A-Za-z]{0,2}))*$"
 
 LONGEST_SERIES = 200  # specimens of a record, and values of one measured property
@@ -30,6 +31,10 @@ LONGEST_SERIES = 200  # specimens of a record, and values of one measured proper
 def _text(description: str, longest: int = 500) -> Schema:
     # A plain 2026 is a number to YAML and a perfectly good edition or name to a person.
     return {"type": ["string", "number"], "minLength": 1, "maxLength": longest, "description": description}
+
+
+def _name(description: str, longest: int) -> Schema:
+    return _text(description, longest) | {"pattern": NAME_PATTERN}
 
 
 def _choice(description: str, options: list[str]) -> Schema:
@@ -172,7 +177,7 @@ def _specimen() -> Schema:
     return _object(
         "a specimen with name and form",
         {
-            "name": _text("a name such as F-12", 100),
+            "name": _name("a name such as F-12", 100),
             "form": _choice("the form of a specimen", list(measures.FORMS)),
             **{key: _value(measure) for key, measure in measures.SPECIMEN.items()},
             "note": _text("a remark in words", 2000),
@@ -222,7 +227,7 @@ def canonical_schema() -> Schema:
         **_object(
             "a record with name and formula",
             {
-                "name": _text("the name of the material", 200),
+                "name": _name("the name of the material", 200),
                 "formula": {"type": "string", "description": "a chemical formula such as GaAs"},
                 "structure": _structure(),
                 "electrons": _electrons(),

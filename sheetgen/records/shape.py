@@ -10,7 +10,7 @@ from typing import TYPE_CHECKING
 from sheetgen.faults import FaultLog, Place, did_you_mean
 from sheetgen.records.nodes import Listing, Node, Scalar, Table, found, plain_data
 from sheetgen.records.quickly import fits
-from sheetgen.records.schema import canonical_schema, validator
+from sheetgen.records.schema import NAME_PATTERN, canonical_schema, validator
 from sheetgen.records.spelling import written_key
 from sheetgen.records.structure import canonical_lattice
 from sheetgen.records.unreadable import shown
@@ -68,6 +68,8 @@ def _name(path: Iterable[str | int]) -> str:
 
 
 def _limit(error: ValidationError) -> str:
+    if error.validator_value == NAME_PATTERN:
+        return " that begins with a letter or a digit"
     limits = {
         "maxLength": "of at most {} characters",
         "maxItems": "of at most {}",

@@ -76,6 +76,9 @@ YAML = {
     "quotes": record("name: '" + "''" * 450_000 + "\n", "1:7: not readable as YAML"),
     "percent signs": record("%" * 900_000, "1:2: not readable as YAML"),
     "tabs": record("\t" * 900_000, "1:1: a tab indents this line"),
+    "a name that a spreadsheet computes": record(
+        "name: '=HYPERLINK(\"x\")'\nformula: Cu\n", "1:7: name: found '=HYPERLINK(\"x\")'; expected the name of the"
+    ),
     "a truth value": record("name: No\nformula: Cu\n", "1:7: the word 'No' is a truth value"),
     "a number to the base 60": measured("1:30", "'1:30' is a number to the base 60"),
     "an octal number": measured("0777", "'0777' is an octal number"),
