@@ -13,6 +13,7 @@ from sheetgen.draws import Interval, draw_intervals
 from sheetgen.lookup import StatedNumber, find_number, stated_numbers
 from sheetgen.quantities import Definition, Registry
 from sheetgen.quantities.batch import input_titles
+from sheetgen.quantities.structure import CELL_CONSTANTS, OF_THE_CELL
 from sheetgen.records import Imprint, Record, Specimen, Value
 from sheetgen.records.units import si_factor
 from sheetgen.standing import AssumptionCheck, Confrontation, Limits, PlainAnswer, plain_answer, thresholds
@@ -193,6 +194,8 @@ class Row:
         return list(found)
 
     def _input_ids(self, name: str, definition: Definition, entry: int) -> list[str]:
+        if name in OF_THE_CELL:
+            return [id for id in CELL_CONSTANTS if id in self.record.inputs]
         ids = self.derived.batch.ids.get(name)
         if ids is None:
             return []

@@ -29,6 +29,10 @@ STRUCTURE_INPUTS = {
     "cell_mass": "a standard atomic weight for each element",
 }
 
+# Lengths among the facts, which move with the constants of the cell; the others are counts and indices.
+OF_THE_CELL = ("shells",)
+CELL_CONSTANTS = tuple(f"structure.{name}" for name in ("a", "b", "c", "c_over_a", "alpha", "beta", "gamma"))
+
 
 @dataclass(frozen=True)
 class StructureFacts:

@@ -57,6 +57,7 @@ def test_cubic_lattices(tmp_path, lattice, atoms, neighbours, distance, packing,
 def test_neighbour_shells(tmp_path, lattice, shells):
     sheet = crystal(tmp_path, "Cu", f"lattice: {lattice}\na: {{value: 4 Å, at: 293 K, from: here}}")
     (entry,) = sheet.entries("neighbour_shells")
+    assert entry["depends_on"] == ["structure.a"]
     assert entry["value"] == [
         {"distance": pytest.approx(4 * math.sqrt(square), rel=1e-12), "count": count} for square, count in shells
     ]
