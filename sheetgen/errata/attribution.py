@@ -7,12 +7,13 @@ the share of the program: its definitions, its constants, its version.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
+from contextlib import suppress
 from dataclasses import replace
 from typing import Any
 
 from sheetgen.errata.changes import Alone, changes, input_changes
-from sheetgen.errata.editions import Edition
+from sheetgen.errata.editions import UNFIT, Edition
 from sheetgen.errata.model import Errata, MaterialErrata
 from sheetgen.errata.program import program_errata
 from sheetgen.errata.telling import Case, Derived, Told, Words
@@ -68,8 +69,20 @@ class _Comparison:
 
     # --- deriving ----------------------------------------------------------------------------------------------------
 
-    def derived(self, cases: Iterable[Case]) -> dict[str, Derived]:
-        """Slug → what was derived, for the materials whose records can be had on both sides."""
+    def derived(self, cases: Sequence[Case]) -> dict[str, Derived]:
+        """Slug → what was derived, for the materials whose records can be had on both sides and can be derived."""
+        try:
+            return self._derived(cases)
+        except UNFIT:
+            if self.old.handbook and self.new.handbook:
+                raise
+        found: dict[str, Derived] = {}
+        for case in cases:  # the data of one of them do not fit together: the others need not suffer from it
+            with suppress(*UNFIT):
+                found |= self._derived([case])
+        return found
+
+    def _derived(self, cases: Sequence[Case]) -> dict[str, Derived]:
         causes: dict[str, list[Alone]] = {}
         under_old: list[Record] = []
         under_new: list[Record] = []

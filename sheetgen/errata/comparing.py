@@ -65,6 +65,7 @@ def paired(old: dict[Point, Entry], new: dict[Point, Entry], by_resistivity: Ite
 def _predecessors(fresh: list[Point], left: list[Point]) -> dict[Point, Point]:
     """Which of the entries left over each fresh one replaces: one at nearly its temperature, else by their order."""
     found: dict[Point, Point] = {}
+    fresh, left = ([point for point in points if point.at is not None] for points in (fresh, left))
     for point in fresh:
         near = [one for one in left if one not in found.values() and abs(one.at - point.at) <= NEARBY]
         if near:

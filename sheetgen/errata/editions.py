@@ -10,17 +10,19 @@ from pathlib import Path
 from typing import Any
 
 from sheetgen.documents import handbook_data
-from sheetgen.errata.comparing import flat
-from sheetgen.errata.model import AXES
+from sheetgen.errata.forms import is_handbook
 from sheetgen.errata.revisions import EditionError, records_at
 from sheetgen.faults import Fault, FaultsError, MachineError, Place
 from sheetgen.handbook import Handbook
 from sheetgen.records import Imprint, Record
 from sheetgen.records.assembly import rebuilt
 from sheetgen.records.imprint import FILE_NAME, default_imprint
+from sheetgen.records.unreadable import UnreadableError
 
 DATA = Path("data") / "handbook.json"
 MAXIMUM_BYTES = 200_000_000
+# What data can do that have the form of a handbook's and do not fit together.
+UNFIT = (LookupError, TypeError, ValueError, AttributeError, ArithmeticError, UnreadableError, FaultsError)
 
 
 @dataclass(frozen=True)
@@ -65,7 +67,7 @@ class Edition:
             return None
         try:
             return rebuilt(self.materials[slug], skeleton)
-        except (LookupError, TypeError, ValueError, AttributeError):
+        except UNFIT:
             return None  # data of another version of the program, or not of this program at all
 
 
@@ -111,64 +113,10 @@ def read_edition(path: Path, name: str) -> Edition:
         raise _fault(path, f"no JSON ({error.msg.lower()}); publish it again.", error.lineno, error.colno) from error
     except (UnicodeDecodeError, RecursionError) as error:
         raise _fault(path, "no JSON in UTF-8; publish it again.") from error
-    if not _is_handbook(data):
+    if not is_handbook(data):
         raise _fault(path, "JSON, but not the data of a handbook; expected data/handbook.json of a site.")
     return Edition(name, data)
 
 
 def _fault(path: Path, message: str, line: int = 0, column: int = 0) -> FaultsError:
     return FaultsError([Fault(Place(str(path), line, column), message)])
-
-
-def _is_handbook(data: Any) -> bool:
-    """Whether the parts that every comparison needs are there, in their form."""
-    if not isinstance(data, dict) or not isinstance(data.get("materials"), list):
-        return False
-    mappings = ("quantities", "assemblies", "conditions")
-    if not all(isinstance(data.get(key, {}), dict) for key in mappings):
-        return False
-    return all(map(_is_material, data["materials"]))
-
-
-def _is_material(material: Any) -> bool:
-    if not isinstance(material, dict) or not all(isinstance(material.get(k), str) for k in ("slug", "name", "formula")):
-        return False
-    inputs, quantities = material.get("inputs"), material.get("quantities")
-    if not isinstance(inputs, dict) or not isinstance(quantities, dict):
-        return False
-    if not all(isinstance(one, dict) and _is_number(one.get("value")) for one in inputs.values()):
-        return False
-    specimens = material.get("specimens", [])
-    if not isinstance(specimens, list) or not all(map(_is_specimen, specimens)):
-        return False
-    checks = material.get("assumptions", [])
-    return isinstance(checks, list) and all(_is_check(check) for check in checks) and _are_quantities(quantities)
-
-
-def _is_specimen(specimen: Any) -> bool:
-    return (
-        isinstance(specimen, dict)
-        and isinstance(specimen.get("name"), str)
-        and isinstance(specimen.get("quantities"), dict)
-        and _are_quantities(specimen["quantities"])
-    )
-
-
-def _is_check(check: Any) -> bool:
-    return isinstance(check, dict) and all(isinstance(check.get(key), str) for key in ("id", "standing"))
-
-
-def _are_quantities(quantities: Mapping[str, Any]) -> bool:
-    entries = [e for stated in quantities.values() for e in (stated if isinstance(stated, list) else [stated])]
-    return all(_is_entry(entry) for entry in entries)
-
-
-def _is_entry(entry: Any) -> bool:
-    if not isinstance(entry, dict) or not isinstance(entry.get("unit"), str):
-        return False
-    numbers = [entry[key] for key in (*AXES, "standard_uncertainty") if key in entry]
-    return all(map(_is_number, [*numbers, *flat(entry.get("value"))]))
-
-
-def _is_number(value: Any) -> bool:
-    return isinstance(value, (int, float)) and not isinstance(value, bool)

@@ -147,17 +147,18 @@ class Told:
             ("assumption", self.checks, self.check_states),
         ):
             for point, old, new in pairs:
-                if old is None or new is None or old.get("standing") == new.get("standing"):
+                standings = [entry and entry.get("standing") for entry in (old, new)]
+                if not all(standings) or standings[0] == standings[1]:
                     continue
                 id = point.quantity
                 title = self.words.title(id) if kind == "quantity" else titles.get(id, id.replace("_", " "))
-                because = self._that_bring_about(point, old["standing"], new["standing"], states)
-                yield StandingChange(point, title, kind, old["standing"], new["standing"], because)
+                because = self._that_bring_about(point, *standings, states)
+                yield StandingChange(point, title, kind, *standings, because)
 
     def _that_bring_about(self, point: Point, old: str, new: str, states: Mapping[str, Any]) -> tuple[str, ...]:
         if not states:
             return ()
-        stands = {name: at[point]["standing"] for name, at in states.items() if point in at}
+        stands = {name: at[point].get("standing") for name, at in states.items() if point in at}
         alone = [name[1:] for name, standing in stands.items() if name[0] == "~" and standing == new]
         by_program = stands.get("old") != old or stands.get("new") != new
         return (*alone, *([PROGRAM] if by_program else []))
