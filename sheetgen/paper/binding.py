@@ -118,9 +118,10 @@ def _number(book: Any, folios: Any, roman: int) -> None:
     """Lay the page numbers over the pages, and give the viewer the same ones."""
     from pikepdf import Array, Dictionary, Name
 
-    for page, folio in zip(book.pages, folios.pages, strict=True):
+    for number, (page, folio) in enumerate(zip(book.pages, folios.pages, strict=True)):
         form = book.copy_foreign(folio.as_form_xobject())
-        name = page.add_resource(form, Name.XObject)
+        # Pages of a part share their resources, so that each needs a name of its own; left alone, it would be random.
+        name = page.add_resource(form, Name.XObject, Name(f"/Folio{number}"))
         # The page's own operators turn its axes over and leave them so.
         page.contents_add(b"q", prepend=True)
         page.contents_add(b"Q /Artifact BMC q %s Do Q EMC" % str(name).encode())

@@ -11,7 +11,7 @@ from functools import cache, lru_cache
 from typing import Any
 
 from sheetgen.pages.environment import template_folder
-from sheetgen.paper.strokes import PlateError, Style, colour, pen
+from sheetgen.paper.strokes import PlateError, Style, colour, pen, plain
 
 FAMILY = "Libertinus Serif"
 
@@ -32,13 +32,13 @@ def lettered(text: Text, fonts: Fonts) -> Iterator[bytes]:
     pieces = [piece for run in text.runs for piece in _pieces(run, fonts)]
     width = sum(piece.width for piece in pieces)
     start = -{"middle": width / 2, "end": width}.get(text.style.get("text-anchor", ""), 0.0)
-    cosine, sine = (round(turn(math.radians(text.turned)), 6) for turn in (math.cos, math.sin))
+    cosine, sine = (turn(math.radians(text.turned)) for turn in (math.cos, math.sin))
     rim = colour(text.style.get("stroke", "none"))
-    yield b"q %g %g %g %g %g %g cm" % (cosine, sine, -sine, cosine, text.x, text.y)
+    yield f"q {' '.join(map(plain, (cosine, sine, -sine, cosine, text.x, text.y)))} cm".encode()
     if rim is not None:
         yield b"%s RG" % rim
         yield from pen(text.style)
-        yield from _shown(pieces, start, rim=True)
+        yield from _shown(pieces, start, rim=float(text.style.get("stroke-width", 1)))
     yield from _shown(pieces, start)
     yield b"Q"
 
@@ -66,7 +66,7 @@ def _pieces(run: tuple[str, Style, float], fonts: Fonts) -> Iterator[_Piece]:
         yield _Piece(letters if known else _signs(), "".join(part), size, fill, shift)
 
 
-def _shown(pieces: list[_Piece], x: float, rim: bool = False) -> Iterator[bytes]:
+def _shown(pieces: list[_Piece], x: float, rim: float = 0.0) -> Iterator[bytes]:
     for piece in pieces:
         if not rim:
             yield b"%s rg" % piece.fill
@@ -107,7 +107,7 @@ class _Letters:
     """One embedded font: glyph numbers and widths of strings; each glyph used is noted for the subset."""
 
     def __init__(self, font: Any):
-        self.font, self.name = font, font.hash.encode()
+        self.font, self.name = font, font.hash
         self.characters, self.numbers, self.widths, self.units = _metrics(bytes(font.file_content))
 
     def has(self, letter: str) -> bool:
@@ -118,18 +118,17 @@ class _Letters:
         """The width of a string, in units of the font size."""
         return sum(self.widths[self.characters[ord(letter)]] for letter in string) / self.units
 
-    def shown(self, string: str, size: float, x: float, y: float, rim: bool) -> Iterator[bytes]:
-        """The operators that show a string at x, y, or the rim of its letters."""
-        yield b"BT %d Tr /%s %g Tf 1 0 0 -1 %g %g Tm <%s> Tj ET" % (
-            rim, self.name, size, x, y, b"".join(map(self._glyph, string))
-        )  # fmt: skip
+    def shown(self, string: str, size: float, x: float, y: float, rim: float) -> Iterator[bytes]:
+        """The operators that show a string at x, y, or a rim of that width around its letters."""
+        where = f"{plain(size)} Tf 1 0 0 -1 {plain(x)} {plain(y)} Tm"
+        yield f"BT {1 if rim else 0} Tr /{self.name} {where} <{''.join(map(self._glyph, string))}> Tj ET".encode()
 
-    def _glyph(self, letter: str) -> bytes:
+    def _glyph(self, letter: str) -> str:
         glyph = self.characters[ord(letter)]
         number = self.numbers[glyph]
         self.font.to_unicode.setdefault(number, letter)
         self.font.widths.setdefault(number, round(self.widths[glyph] * 1000 / self.units))
-        return b"%04x" % number
+        return f"{number:04x}"
 
 
 class _Signs:
@@ -143,13 +142,13 @@ class _Signs:
         """The width of a string, in units of the font size."""
         return sum(self.glyphs[self._name(sign)].width for sign in string) / self.units
 
-    def shown(self, string: str, size: float, x: float, y: float, rim: bool) -> Iterator[bytes]:
-        """The operators that draw a string at x, y, or the rim of its signs."""
+    def shown(self, string: str, size: float, x: float, y: float, rim: float) -> Iterator[bytes]:
+        """The operators that draw a string at x, y, or a rim of that width around its signs."""
         scale = size / self.units
         for sign in string:
-            yield b"q %g 0 0 %g %g %g cm" % (scale, -scale, x, y)
+            yield f"q {plain(scale)} 0 0 {plain(-scale)} {plain(x)} {plain(y)} cm".encode()
             if rim:  # a stroke grows and shrinks with what it goes around
-                yield b"%g w" % (220 / scale)
+                yield f"{plain(rim / scale)} w".encode()
             yield _drawn_glyph(self.glyphs, self._name(sign)) + (b" S Q" if rim else b" f Q")
             x += self.glyphs[self._name(sign)].width * scale
 
@@ -167,7 +166,7 @@ def _drawn_glyph(glyphs: Any, name: str) -> bytes:
     operators = {"moveTo": "m", "lineTo": "l", "curveTo": "c", "closePath": "h", "endPath": ""}
     parts = []
     for operation, points in recorded.value:
-        numbers = " ".join(f"{u:g} {v:g}" for u, v in points)
+        numbers = " ".join(f"{plain(u)} {plain(v)}" for u, v in points)
         parts.append(f"{numbers} {operators[operation]}".strip())
     return " ".join(parts).encode()
 

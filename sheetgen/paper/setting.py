@@ -33,8 +33,12 @@ _OTHER_WORDS = (
     (re.compile(r"\\(min|max)_\{"), r"\\operatorname{\1}_{"),
     (re.compile(r"\\mathbf\{([A-Z])\}"), r"\\mathbf{\1}"),
 )
+# Figures and brackets stand upright between slanted letters; mathtext slants all that is not told otherwise.
+_PIECE = re.compile(
+    r"\\(?:mathrm|text|operatorname|mathbf)\{[^{}]*\}|\\(?:left|right)\s*(?:\\[A-Za-z]+|\\?.)|\\[A-Za-z]+|\\."
+    r"|(?P<upright>[0-9]+|[()\[\]])"
+)
 _OPERATIONS = {1: "M", 2: "L", 3: "Q", 4: "C", 79: "Z"}
-_AS_DRAWN = 0x1 | 0x2  # FT_LOAD_NO_SCALE | FT_LOAD_NO_HINTING
 _POINTS = {1: 1, 2: 1, 3: 2, 4: 3, 79: 0}
 
 
@@ -62,7 +66,7 @@ def _letters(element: ElementTree.Element) -> str:
     match element.tag:
         case "mi":
             text = (element.text or "").replace("ℏ", "ħ")  # the same letter, which the italic has too
-            upright = len(text) > 1 or element.get("mathvariant") == "normal"
+            upright = len(text) > 1 or not text.isalpha() or element.get("mathvariant") == "normal"
             return html.escape(text) if upright else f"<i>{html.escape(text)}</i>"
         case "mn" | "mo" | "mtext":
             text = (element.text or "").translate(_UNSEEN)
@@ -131,7 +135,7 @@ def _outlines(latex: str) -> tuple[str, float, float, float]:
 def _in_other_words(latex: str) -> str:
     for pattern, words in _OTHER_WORDS:
         latex = pattern.sub(words, latex)
-    return latex
+    return _PIECE.sub(lambda piece: rf"\mathrm{{{piece['upright']}}}" if piece["upright"] else piece[0], latex)
 
 
 def _glyph(font: Any, size: float, character: int, *where: float) -> str:
@@ -139,12 +143,22 @@ def _glyph(font: Any, size: float, character: int, *where: float) -> str:
     *glyph, x, y = where
     # In font units, without hints: these would round the outlines to the pixels of a screen.
     if glyph:  # newer releases of matplotlib also say which glyph, of which a character may have several
-        font.load_glyph(int(glyph[0]), flags=_AS_DRAWN)
+        font.load_glyph(int(glyph[0]), flags=_as_drawn())
     else:
-        font.load_char(character, flags=_AS_DRAWN)
+        font.load_char(character, flags=_as_drawn())
     vertices, codes = font.get_path()
     scale = 64 * size / font.units_per_EM  # what is not scaled still counts as 64ths of a pixel
     return "".join(_segments(((x + u * scale, -(y + v * scale)) for u, v in vertices.tolist()), codes.tolist()))
+
+
+@cache
+def _as_drawn() -> Any:
+    """FreeType's word for an outline neither scaled nor hinted, which matplotlib has under two names."""
+    from matplotlib import ft2font
+
+    if hasattr(ft2font, "LoadFlags"):
+        return ft2font.LoadFlags.NO_SCALE | ft2font.LoadFlags.NO_HINTING
+    return ft2font.LOAD_NO_SCALE | ft2font.LOAD_NO_HINTING
 
 
 def _segments(points: Iterator[tuple[float, float]], codes: list[int]) -> Iterator[str]:

@@ -118,6 +118,7 @@ def manuscript(sheet: Any, handbook: Any, figures: Sequence[Any], level: Level =
         address=address,
         code=codes.data_address(address) if address else "",
         plates=arranged(shown, paper_of(handbook.imprint)),
+        caption=lambda figure: figure.title.removesuffix(f": {sheet.record.name}"),
         dense=level.dense,
         left_out=[figure for figure in figures if figure.id in level.left_out],
         signs=SIGNS,
@@ -167,9 +168,9 @@ def by_reason(lines: Sequence[Any]) -> list[tuple[str, list[Any]]]:
 
 
 def plainer(html: str) -> str:
-    """The same text in fewer elements, each of which costs time: figures raised by Unicode, breaks left to chance."""
+    """The same text in fewer elements, each of which costs time: figures raised by Unicode, breaks at spaces."""
     raised = _RAISED.sub(lambda power: numbers.superscript(int(power[1].replace(numbers.MINUS, "-"))), html)
-    return raised.replace(f"<wbr>{numbers.NARROW}", numbers.NARROW)
+    return raised.replace(f"<wbr>{numbers.NARROW}", " ")
 
 
 def page_address(imprint: Any, path: str) -> str:

@@ -17,6 +17,12 @@ class PlateError(ValueError):
     """A figure that uses a word of SVG which plates do not know."""
 
 
+def plain(number: float) -> str:
+    """A number as a PDF wants it: no exponent, and no more digits than an eye could tell apart."""
+    text = f"{number:.4f}".rstrip("0").rstrip(".")
+    return "0" if text == "-0" else text
+
+
 def painted(d: str, style: Style, translucent: Callable[[float], bytes]) -> Iterator[bytes]:
     """A path with its fill and its stroke; `translucent` gives the operator for an opacity."""
     fill, stroke = colour(style.get("fill", "none")), colour(style.get("stroke", "none"))
@@ -37,7 +43,7 @@ def painted(d: str, style: Style, translucent: Callable[[float], bytes]) -> Iter
 
 def pen(style: Style) -> Iterator[bytes]:
     """Width, ends, corners and dashes of a stroke."""
-    yield b"%g w" % float(style.get("stroke-width", "1"))
+    yield f"{plain(float(style.get('stroke-width', '1')))} w".encode()
     yield b"%d J" % _CAPS[style.get("stroke-linecap", "butt")]
     yield b"1 j" if style.get("stroke-linejoin") == "round" else b"0 j"
     if dashes := style.get("stroke-dasharray"):
@@ -81,7 +87,7 @@ def outline(d: str) -> bytes:
             else:
                 x, y = (x + part[0], y + part[1]) if relative else (part[0], part[1])
             moves = kind == "M" and start == 0
-            out.append(f"{x:g} {y:g} {'m' if moves else 'l'}")
+            out.append(f"{plain(x)} {plain(y)} {'m' if moves else 'l'}")
             if moves:
                 first_x, first_y = x, y
     return " ".join(out).encode()
@@ -96,7 +102,7 @@ def _moved(kind: str, to: float, relative: bool, x: float, y: float) -> tuple[fl
 def _arc(start: tuple[float, float], end: tuple[float, float], rx: float, ry: float, large: bool, sweep: bool) -> str:
     """An elliptical arc with upright axes as Bézier curves (SVG 2, appendix B.2.4)."""
     if start == end or not rx or not ry:
-        return f"{end[0]:g} {end[1]:g} l"
+        return f"{plain(end[0])} {plain(end[1])} l"
     half_x, half_y = (start[0] - end[0]) / 2 / rx, (start[1] - end[1]) / 2 / ry
     reach = math.hypot(half_x, half_y)
     if reach > 1:
@@ -118,5 +124,5 @@ def _arc(start: tuple[float, float], end: tuple[float, float], rx: float, ry: fl
             (math.cos(b) + pull * math.sin(b), math.sin(b) - pull * math.cos(b)),
             (math.cos(b), math.sin(b)),
         )
-        curves.append(" ".join(f"{centre[0] + rx * u:.6g} {centre[1] + ry * v:.6g}" for u, v in points) + " c")
+        curves.append(" ".join(f"{plain(centre[0] + rx * u)} {plain(centre[1] + ry * v)}" for u, v in points) + " c")
     return " ".join(curves)
