@@ -105,14 +105,16 @@
   function setCurves(tables) {
     const kinds = [...new Set(tables.flatMap((one) => Object.keys(one.curves)))];
     charts.replaceChildren(...kinds.map((kind) => {
-      const having = chosen.map((slug, order) => ({ name: nameOf(slug), order, ...tables[order].curves[kind] })).filter((one) => one.x);
-      const { title, names: axes } = having[0];
+      const drawn = chosen.map((slug, order) => ({ name: nameOf(slug), order, ...tables[order].curves[kind] })).filter((one) => one.x);
+      const { title, names: axes } = drawn[0];
+      // States per area and states per volume have no axis in common.
+      const having = drawn.filter((one) => one.names.join() === axes.join());
       // A curve keeps the line of its material even where another material has none.
       const curves = chosen.map((slug, order) => having.find((one) => one.order === order) || { name: nameOf(slug), x: [], y: [] });
       const picture = handbook.chart.chart({ id: `chart-${kind}`, title, names: axes, curves, logarithmic: LOGARITHMIC.includes(kind) });
       const without = curves.filter((one) => !one.x.length).map((one) => one.name);
       return make("figure", {}, picture, make("figcaption", {}, make("b", { text: `${title}. ` }),
-        ...having.flatMap((one) => [handbook.chart.key(one.order), ` ${one.name} `]), without.length ? `Without a curve: ${without.join(", ")}.` : null));
+        ...having.flatMap((one, place) => [handbook.chart.key(one.order), ` ${one.name}${place < having.length - 1 ? " " : ". "}`]), having.some((one) => one.level) ? "Dots: Fermi level. " : null, without.length ? `Not in this picture: ${without.join(", ")}.` : null));
     }));
     document.getElementById("compare-curves").hidden = !kinds.length;
   }

@@ -15,7 +15,7 @@
   /* Small letters without accents, Greek by name, indices on the line: "E_F", "EF" and "E subscript F" alike. */
   const even = (text) => text.replace(/[ħℏ]/g, " hbar ").normalize("NFKD").replace(/\p{M}/gu, "").toLowerCase()
     .replace(/\p{Script=Greek}/gu, (letter) => ` ${GREEK[letter] || letter} `).replace(/[–—−]/g, "-");
-  const pieces = (text) => even(text).split(/[^\p{L}\p{N}.%*]+/u).filter(Boolean);
+  const pieces = (text) => even(text).split(/[^\p{L}\p{N}.%]+/u).filter(Boolean);
   const joined = (text) => pieces(text).join("");
 
   const entries = handbookTables.search.map(([kind, title, symbol, address, more]) => {
@@ -121,5 +121,6 @@
   addEventListener("hashchange", fromAddress);
   page.hidden = false;
   fromAddress();
-  input.focus();
+  // Who comes by the link of the masthead wants to type.
+  if (location.hash === "#search") input.focus();
 })();

@@ -173,6 +173,7 @@
   FIXED.forEach((key) => {
     const button = sortButton(key, "");
     button.removeAttribute("aria-label");
+    button.className = "";
     button.append(...heads[key].childNodes);
     heads[key].append(button);
   });
@@ -224,7 +225,7 @@
       const box = make("input", { type: "checkbox", value: id, onchange: choose });
       const select = points.length > 1 ? make("select", { "aria-label": `${quantities[id].title}: at`, onchange: choose },
         ...points.map(([point, words]) => make("option", { value: point, text: words }))) : null;
-      return make("li", {}, make("label", {}, box, make("span", {}, symbolOf(id), ` ${quantities[id].title}`)), select);
+      return make("li", {}, make("label", {}, box, make("span", {}, quantities[id].symbol ? symbolOf(id) : null, ` ${quantities[id].title}`)), select);
     };
     const choose = () => {
       const ticked = [...chooser.querySelectorAll("input:checked")].map((box) =>

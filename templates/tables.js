@@ -111,13 +111,12 @@ globalThis.handbook = (() => {
     return pieces;
   }
 
-  /* A symbol such as E_F: the letter slanted, its index below the line. */
+  /* A symbol such as *E*_{F}: the letter slanted, its index below the line. */
   function symbol(text) {
     const pieces = document.createDocumentFragment();
-    for (const piece of text.split(/(_[^\s_^/()]+|\^\S)/u)) {
-      if (piece.startsWith("_")) pieces.append(element("sub", { text: piece.slice(1) }));
-      else if (piece.startsWith("^")) pieces.append(element("sup", { text: piece.slice(1) }));
-      else if (piece) pieces.append(element("i", { text: piece }));
+    for (const [piece, letters, below, above] of text.matchAll(/\*([^*]+)\*|_\{([^}]*)\}|\^\{([^}]*)\}|[^*_^]+/gu)) {
+      const [name, words] = letters ? ["i", letters] : below ? ["sub", below] : above ? ["sup", above] : ["span", piece];
+      pieces.append(element(name, { text: words }));
     }
     return pieces;
   }

@@ -12,7 +12,7 @@ from markupsafe import Markup
 from sheetgen.figures import draw_handbook, draw_ranking
 from sheetgen.figures.style import whole_sheet
 
-# With more materials a ranking has more rows than a reader can follow; the table and its CSV have them all.
+# With more materials a picture of all of them has more rows than a reader can follow; the table has them all.
 MOST_ROWS = 150
 # From the folder of a figure to the top of the site.
 ROOT = "../../"
@@ -35,8 +35,8 @@ class Gallery:
 
     def __init__(self, handbook: Any):
         self.handbook = handbook
-        self.of_handbook = draw_handbook(handbook, ROOT)
         few = len(handbook.sheets) <= MOST_ROWS
+        self.of_handbook = draw_handbook(handbook, ROOT) if few else []
         numbers = [id for id, found in handbook.registry.published().items() if few and found.form == "number"]
         drawn = ((id, draw_ranking(handbook, id, ROOT)) for id in numbers)
         self.rankings = {id: figure for id, figure in drawn if figure is not None}

@@ -7,7 +7,7 @@ from typing import Any
 from urllib.parse import quote
 
 from . import citations, words
-from .tables import symbol_text
+from .tables import symbol_marked
 
 PAGES = (
     ("Periodic table", "periodic-table.html", "elements shaded by a quantity"),
@@ -39,7 +39,7 @@ def _quantities(handbook: Any) -> Iterator[tuple[str, str, str, str, str]]:
     for id in dict.fromkeys([*registry.published(), *registry.published("specimen")]):
         definition = registry.definitions_of(id)[0]
         more = f"{id.replace('_', ' ')} {definition.section}"
-        yield "quantity", definition.title, symbol_text(definition.symbol), f"quantities/{id}.html", more
+        yield "quantity", definition.title, symbol_marked(definition.symbol), f"quantities/{id}.html", more
 
 
 def _assumptions(handbook: Any) -> Iterator[tuple[str, str, str, str, str]]:

@@ -12,7 +12,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from functools import cache
 from typing import Any
 
-from sheetgen.figures.markup import from_latex, plain
+from sheetgen.figures.markup import from_latex
 
 from . import entries, front, numbers, unit_choices, words
 
@@ -51,7 +51,7 @@ class Tables:
             definition = self.handbook.registry.definitions_of(id)[0]
             found[id] = {
                 "title": definition.title,
-                "symbol": symbol_text(definition.symbol),
+                "symbol": symbol_marked(definition.symbol),
                 "section": definition.section,
                 "units": unit_choices.choices(definition.unit, preference.of(id, definition.unit)),
                 "points": [[point, words_of_point(point, definition.listed_by, self.reference)] for point in column],
@@ -64,7 +64,7 @@ class Tables:
         for id in self.columns:
             for point, entry in self.stated(sheet, self.handbook.registry.definitions_of(id)[0]):
                 stated.setdefault(id, {}).setdefault(point, _number(entry))
-        return {"quantities": stated, "curves": curves(figures)}
+        return {"quantities": stated, "curves": marked(curves(figures), sheet)}
 
     def _column(self, definition: Any) -> dict[str, dict[str, Any]]:
         found: dict[str, dict[int, dict]] = {}
@@ -121,10 +121,9 @@ def materials(handbook: Any) -> dict[str, list]:
 
 
 @cache
-def symbol_text(latex: str) -> str:
-    """A symbol as one line of text, as E_F; "" where it needs more."""
-    marked = from_latex(latex)
-    return plain(marked) if marked else ""
+def symbol_marked(latex: str) -> str:
+    """A symbol in the marks of the figures, as *E*_{F}; "" where it needs more."""
+    return from_latex(latex) or ""
 
 
 def words_of_point(point: str, axis: str | None, reference: float) -> str:
@@ -174,14 +173,41 @@ def _number(entry: dict[str, Any]) -> list:
     return [*packed, words.STANDINGS.index(entry["standing"]), int(entries.is_count(entry))]
 
 
+# What ends the filled part of a curve: the quantities at its Fermi level, as (x, y).
+FERMI_LEVEL = {
+    "parabola": ("fermi_wavevector", "fermi_energy"),
+    "density-of-states": ("fermi_energy", "density_of_states"),
+}
+SMALLER = {" / meV": (" / eV", 1e-3)}
+
+
 def curves(figures: Sequence[Any]) -> dict[str, dict[str, Any]]:
-    """Figure → title, names of both axes and the points of the one curve that is compared."""
+    """Figure → title, names of both axes and the points of its one curve, in units common to all."""
     found = {}
     for figure in figures:
         if figure.id in CURVES:
             head, *lines = (line.split(",") for line in figure.csv.decode().splitlines())
             points = [(float(line[1]), float(line[2])) for line in lines if line[0] == CURVES[figure.id]]
             if len(points) > 1:
-                x, y = zip(*points, strict=True)
-                found[figure.id] = {"title": figure.title, "names": head[1:3], "x": x, "y": y}
+                scaled = [_common(*axis) for axis in zip(head[1:3], zip(*points, strict=True), strict=True)]
+                (x_name, x), (y_name, y) = scaled
+                title = figure.title.partition(":")[0]
+                found[figure.id] = {"title": title, "names": [x_name, y_name], "x": x, "y": y}
+    return found
+
+
+def _common(name: str, values: Sequence[float]) -> tuple[str, list[float]]:
+    """An axis in the larger unit where its figure has a smaller one."""
+    for ending, (common, factor) in SMALLER.items():
+        if name.endswith(ending):
+            return name.removesuffix(ending) + common, [short(value * factor) for value in values]
+    return name, [short(value) for value in values]
+
+
+def marked(found: dict[str, dict[str, Any]], sheet: Any) -> dict[str, dict[str, Any]]:
+    """The curves, each with the point of its Fermi level where it has one."""
+    for figure, ids in FERMI_LEVEL.items():
+        place = [sheet.entries(id)[0]["value"] for id in ids if sheet.entries(id)]
+        if figure in found and len(place) == len(ids):
+            found[figure]["level"] = [short(value) for value in place]
     return found

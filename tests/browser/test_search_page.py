@@ -72,7 +72,7 @@ def test_by_keyboard_from_the_first_page_to_the_number(browser, pressed_site):
         page.goto((pressed_site / "index.html").as_uri())
         page.get_by_role("link", name="Search").focus()
         page.keyboard.press("Enter")
-        page.wait_for_url("**/search.html")
+        page.wait_for_url("**/search.html#search")
         page.keyboard.type("fermi velocity silver")
         page.keyboard.press("Enter")
         page.wait_for_url("**/materials/silver.html#fermi_velocity")

@@ -7,7 +7,7 @@ import re
 
 import pytest
 
-from sheetgen.pages.tables import as_script, curves, point_of, short, symbol_text
+from sheetgen.pages.tables import as_script, curves, marked, point_of, short, symbol_marked
 from sheetgen.pages.words import STANDINGS
 
 
@@ -106,10 +106,10 @@ def test_digits_that_mean_nothing_are_left_out(value, spread, expected):
 
 
 @pytest.mark.parametrize(
-    "latex, text", [(r"E_\mathrm{F}", "E_F"), (r"\hbar\omega_\mathrm{p}", "ħω_p"), (r"\frac{a}{b}", "")]
+    "latex, text", [(r"E_\mathrm{F}", "*E*_{F}"), (r"\hbar\omega_\mathrm{p}", "*ħ**ω*_{p}"), (r"\frac{a}{b}", "")]
 )
 def test_symbol_as_text(latex, text):
-    assert symbol_text(latex) == text
+    assert symbol_marked(latex) == text
 
 
 def test_curves_are_the_points_of_the_figures(handbook):
@@ -123,3 +123,16 @@ def test_curves_are_the_points_of_the_figures(handbook):
     # and its curve is cut at the edge of the picture, between two of its points.
     inner = list(zip(energy["x"], energy["y"], strict=True))[1:-1]
     assert [y for _, y in inner] == pytest.approx([0.0380998212 * x**2 for x, _ in inner], rel=2e-5, abs=1e-5)
+
+
+def test_curves_share_their_units_and_carry_their_fermi_level(handbook):
+    from sheetgen.figures import draw_all
+
+    sheet = handbook["gallium-arsenide-n"]
+    found = marked(curves(draw_all(sheet, handbook)), sheet)
+    assert found["parabola"]["names"] == ["k / nm⁻¹", "E / eV"]
+    assert max(found["parabola"]["y"]) < 1
+    assert found["parabola"]["level"] == pytest.approx(
+        [sheet.entries(id)[0]["value"] for id in ("fermi_wavevector", "fermi_energy")]
+    )
+    assert ":" not in found["parabola"]["title"]
