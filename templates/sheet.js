@@ -72,7 +72,7 @@
   /** Make a printed number a button that copies it, with a link to its place behind it. */
   function quotable(cell, id, title) {
     const button = make("button", { type: "button", className: "copy" });
-    button.append(...[...cell.childNodes].filter((node) => !node.classList?.contains("only-mark")));
+    button.append(...[...cell.childNodes].filter((node) => !node.matches?.(".only-mark, .interval")));
     const label = make("span", { className: "aside", textContent: `Copy ${title}: ` });
     button.prepend(label);
     button.addEventListener("click", () => take(id, title));

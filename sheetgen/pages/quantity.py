@@ -29,6 +29,7 @@ class Ranked:
     standing: str
     origin: str
     mark: tuple[float, float, float] | None
+    recalled: bool
 
 
 @dataclass(frozen=True)
@@ -89,14 +90,14 @@ def _ranking(id: str, unit: str, found: list[tuple[Any, dict, str]], preference:
         power, cells = numbers.column(pairs, whole)
         marks, scale = _marks(pairs)
     rows = tuple(
-        _ranked(sheet, entry, name, cells[index], marks[index] if marks else None)
+        _ranked(id, sheet, entry, name, cells[index], marks[index] if marks else None)
         for index, (sheet, entry, name) in enumerate(found)
     )
     shown_unit = Markup("") if listed else numbers.unit(preference.of(id, unit))
     return Ranking(shown_unit, power, rows, scale, listed)
 
 
-def _ranked(sheet: Any, entry: dict, specimen: str, value: Markup, mark: tuple | None) -> Ranked:
+def _ranked(id: str, sheet: Any, entry: dict, specimen: str, value: Markup, mark: tuple | None) -> Ranked:
     record = sheet.record
     at = entries.where(entry)
     names = tuple(found.name for found in record.specimens)
@@ -111,6 +112,7 @@ def _ranked(sheet: Any, entry: dict, specimen: str, value: Markup, mark: tuple |
         entry["standing"],
         entries.origin(entry, names),
         mark,
+        not specimen and id in sheet.recalled,
     )
 
 
