@@ -38,9 +38,9 @@ def _sheets(executor: Any, handbook: Any, figures: Mapping[str, Sequence[Any]]) 
     of = [(sheet, handbook, figures.get(sheet.record.slug, ())) for sheet in handbook.sheets]
     first = workers.submitted(executor, [sheets.manuscript(*one) for one in of])
     for parts, future in zip(of, first, strict=True):
-        printed = future.result()
+        printed, level = future.result(), sheets.LEVELS[0]
         while not printed.pdf:
-            level = sheets.level_for(printed.excess)
+            level = sheets.tighter(level, printed.excess)
             printed = workers.submitted(executor, [sheets.manuscript(*parts, level=level)])[0].result()
         yield printed
 

@@ -26,7 +26,8 @@ SIGNS = {
     "holds": "●", "strained": "◐", "broken": "⊘",
 }  # fmt: skip
 _RAISED = re.compile(rf"<sup>([-{numbers.MINUS}]?\d+)</sup>")
-FIRST = ("parabola", "confrontation")  # what a reader in a hurry wants to see beside the plain answer
+# What a reader in a hurry wants to see beside the plain answer: the first two of these that a material has.
+FIRST = ("parabola", "confrontation", "density-of-states", "heat")
 # A page of nothing but figures is worth it where they fill at least this part of its two columns.
 FULL_ENOUGH = 0.8
 
@@ -75,6 +76,7 @@ LEVELS = (
     Level(True, ("bands", "chemical-potential", "density-of-states", "counting"), 370.0),
 )
 MOST_PAGES = 4
+LEAST_ON_LAST = 45.0  # millimetres of column: what is less is better pressed into the pages before
 
 
 @dataclass(frozen=True)
@@ -124,18 +126,41 @@ def manuscript(sheet: Any, handbook: Any, figures: Sequence[Any], level: Level =
         signs=SIGNS,
         references=_References(context["cited"]),
         telling=telling,
-        use=by_reason(answer.use),
-        scale=by_reason(answer.scale),
-        avoid=by_reason(answer.avoid),
+        verdicts=verdicts(answer),
         **context,
     )
-    most = MOST_PAGES if level is not LEVELS[-1] else None
-    return Manuscript(sheet.record.slug, plainer(html.decode()), {figure.id: figure.svg for figure in shown}, most)
+    return Manuscript(
+        sheet.record.slug,
+        plainer(html.decode()),
+        {figure.id: figure.svg for figure in shown},
+        most_pages=MOST_PAGES if level is not LEVELS[-1] else None,
+        least_on_last=LEAST_ON_LAST if level is LEVELS[0] else 0.0,
+    )
 
 
-def level_for(excess: float) -> Level:
-    """The least pressed level that brings a sheet back to its pages."""
-    return next((level for level in LEVELS[1:] if level.saves >= excess), LEVELS[-1])
+def tighter(level: Level, excess: float) -> Level:
+    """The next level that brings a sheet, which at this one is too long by some millimetres, back to its pages."""
+    following = LEVELS[LEVELS.index(level) + 1 :]
+    return next((one for one in following if one.saves >= level.saves + excess), LEVELS[-1])
+
+
+@dataclass(frozen=True)
+class Verdict:
+    """One column of the plain answer; `share` of the width goes by how much it has to say."""
+
+    kind: str
+    lines: list[tuple[str, list[Any]]]
+    share: float
+
+
+def verdicts(answer: Any) -> list[Verdict]:
+    """What to use, to scale and to avoid."""
+    found = []
+    for kind in ("use", "scale", "avoid"):
+        lines = by_reason(getattr(answer, kind))
+        said = sum(len(reason) + sum(len(line.title) + 12 for line in alike) for reason, alike in lines)
+        found.append(Verdict(kind, lines, round(1 + min(said / 500, 1.6), 2)))
+    return found
 
 
 class _References:
@@ -197,13 +222,17 @@ def arranged(figures: Sequence[Any], paper: Paper) -> Plates:
 
     A figure is never cut nor shrunk, so that it is the choice of neighbours that saves paper.
     """
-    first = tuple(figure for figure in figures if figure.id in FIRST)
+    first = tuple(sorted((figure for figure in figures if figure.id in FIRST), key=_rank)[:2])
     others = [figure for figure in figures if figure not in first]
     left, right = fullest(others, paper.column)
     if sum(map(height, left + right)) < FULL_ENOUGH * 2 * paper.column:
         left, right = (), ()
     rest = tuple(figure for figure in others if figure not in left + right)
     return Plates(first, (left, right), rest)
+
+
+def _rank(figure: Any) -> int:
+    return FIRST.index(figure.id)
 
 
 def fullest(figures: Sequence[Any], column: float) -> tuple[tuple[Any, ...], tuple[Any, ...]]:

@@ -27,6 +27,7 @@ class Manuscript:
     html: str
     figures: Mapping[str, bytes] = field(default_factory=dict)
     most_pages: int | None = None
+    least_on_last: float = 0.0  # millimetres of column below which a last page is not worth its paper
 
 
 def require() -> Any:
@@ -84,13 +85,12 @@ class Typesetter:
     def set(self, manuscript: Manuscript) -> Printed:
         """The document as tagged PDF/UA-1; the same manuscript gives the same bytes.
 
-        Where it needs more pages than it may, there is no PDF but the excess.
+        Where it needs more pages than it may, or the last is as good as empty, there is no PDF but the excess.
         """
         with _uncollected():
             document = self._laid_out(manuscript)
             pages = document.pages
-            if manuscript.most_pages and len(pages) > manuscript.most_pages:
-                excess = sum(map(_filled, pages[manuscript.most_pages :]))
+            if excess := _excess(pages, manuscript):
                 return Printed(b"", len(pages), (), {}, excess)
             anchors = {name: number for number, page in enumerate(pages) for name in page.anchors}
             pdf = document.write_pdf(
@@ -128,6 +128,13 @@ def _uncollected() -> Iterator[None]:
         if active:
             gc.enable()
         gc.collect()
+
+
+def _excess(pages: Sequence[Any], manuscript: Manuscript) -> float:
+    if manuscript.most_pages and len(pages) > manuscript.most_pages:
+        return sum(map(_filled, pages[manuscript.most_pages :]))
+    last = _filled(pages[-1])
+    return last if len(pages) > 1 and last < manuscript.least_on_last else 0.0
 
 
 def _filled(page: Any) -> float:

@@ -214,7 +214,7 @@ def test_letter_is_set_as_well(paper_machine, paper_records, handbook):
     setter = Typesetter(sheets.style(book), f"{(template_folder() / 'fonts').as_uri()}/")
     figures, level = draw_all(sheet, handbook), sheets.LEVELS[0]
     while not (printed := setter.set(sheets.manuscript(sheet, book, figures, level))).pdf:
-        level = sheets.level_for(printed.excess)
+        level = sheets.tighter(level, printed.excess)
     pages = pypdf.PdfReader(io.BytesIO(printed.pdf)).pages
     assert 2 <= len(pages) <= 4
     assert (float(pages[0].mediabox.width), float(pages[0].mediabox.height)) == pytest.approx((612, 792), abs=0.1)

@@ -56,14 +56,17 @@ def test_no_figure_is_lost_or_shown_twice():
 
 
 def test_a_page_that_figures_would_not_fill_is_not_begun():
-    found = sheets.arranged([Drawn("parabola", 60), Drawn("a", 60), Drawn("b", 60)], A4)
+    found = sheets.arranged([Drawn("a", 60), Drawn("parabola", 60), Drawn("b", 60)], A4)
     assert found.full == ((), ())
     assert [figure.id for figure in found.in_column] == ["a", "b"]
 
 
-@pytest.mark.parametrize("excess, level", [(1.0, 1), (60.0, 1), (61.0, 2), (250.0, 3), (9999.0, 3)])
-def test_a_sheet_is_pressed_no_more_than_it_must_be(excess, level):
-    assert sheets.level_for(excess) is sheets.LEVELS[level]
+@pytest.mark.parametrize(
+    "level, excess, then",
+    [(0, 1.0, 1), (0, 60.0, 1), (0, 61.0, 2), (0, 9999.0, 3), (1, 1.0, 2), (1, 200.0, 3), (2, 0.1, 3)],
+)
+def test_a_sheet_is_pressed_no_more_than_it_must_be_and_never_as_before(level, excess, then):
+    assert sheets.tighter(sheets.LEVELS[level], excess) is sheets.LEVELS[then]
 
 
 def test_figures_are_raised_by_unicode():
