@@ -76,6 +76,7 @@ class Evidence:
             {
                 "id": id,
                 "first": checks[0],
+                "worst": self.evaluation(_worst(checks, declared.get((id, indicator)))),
                 "formula": declared[id, indicator].formula if (id, indicator) in declared else "",
                 "standing": max((check.standing for check in checks), key=words.CONDITIONS.index),
                 "evaluations": _each_once([self.evaluation(check) for check in checks]),
@@ -96,6 +97,12 @@ class Evidence:
             "bound": None if check.bound is None else numbers.printed(check.bound).html,
             "standing": check.standing,
         }
+
+
+def _worst(checks: list[Any], assumption: Any) -> Any:
+    """The check of the worst standing whose indicator lies furthest to the side that the bound shuts out."""
+    side = -1 if assumption is not None and assumption.below else 1
+    return max(checks, key=lambda check: (words.CONDITIONS.index(check.standing), side * check.value))
 
 
 def _each_once(evaluations: list[dict[str, Any]]) -> list[dict[str, Any]]:
