@@ -2,14 +2,29 @@
 
 from __future__ import annotations
 
+import signal
 import sys
-
-from sheetgen.cli import run
 
 
 def main() -> None:
     """Run one command and leave with its exit status."""
-    sys.exit(run(sys.argv[1:]))
+    sys.unraisablehook = _deliver_again
+    try:
+        from sheetgen.cli import run
+
+        sys.exit(run(sys.argv[1:]))
+    except KeyboardInterrupt:  # stopped before the commands were loaded, or after they were done
+        sys.stderr.write("sheetgen: stopped\n")
+        sys.exit(130)
+
+
+def _deliver_again(lost: sys.UnraisableHookArgs) -> None:
+    """An interrupt that falls into a callback of the interpreter would be printed and forgotten."""
+    if lost.exc_type is KeyboardInterrupt and hasattr(signal, "setitimer"):
+        signal.signal(signal.SIGALRM, signal.default_int_handler)
+        signal.setitimer(signal.ITIMER_REAL, 0.01)
+    else:
+        sys.__unraisablehook__(lost)
 
 
 if __name__ == "__main__":
