@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import base64
 from collections.abc import Mapping, Sequence
 from typing import Any
 
@@ -36,6 +37,7 @@ def front(handbook: Any, first_pages: Sequence[int], behind: Mapping[str, int]) 
         handbook,
         address=address,
         code=codes.data_address(address) if address else "",
+        logo=_logo(handbook.imprint.look.logo),
         columns=columns,
         materials=materials,
         parts=[(words_of, anchor, behind[anchor]) for anchor, words_of in PARTS.items()],
@@ -69,13 +71,13 @@ def back(handbook: Any, first_page: int) -> Manuscript:
 
 def folios(handbook: Any, roman: int, pages: int) -> str:
     """Pages with nothing on them but their numbers in the handbook."""
-    template = sheets.press().render("paper/folios.html", roman=roman, pages=pages, language="en")
+    template = sheets.press(handbook).render("paper/folios.html", roman=roman, pages=pages, language="en")
     return template.decode()
 
 
 def _manuscript(name: str, handbook: Any, **context: Any) -> Manuscript:
     imprint = handbook.imprint
-    html = sheets.press().render(
+    html = sheets.press(handbook).render(
         f"paper/{name}.html",
         imprint=imprint,
         language=words.language(imprint.language),
@@ -84,6 +86,15 @@ def _manuscript(name: str, handbook: Any, **context: Any) -> Manuscript:
         **context,
     )
     return Manuscript(name, sheets.plainer(html.decode()))
+
+
+def _logo(logo: tuple[str, bytes] | None) -> str:
+    """A group's logo as a data address, "" where it has none."""
+    if logo is None:
+        return ""
+    name, content = logo
+    kind = "image/svg+xml" if name.endswith(".svg") else "image/png"
+    return f"data:{kind};base64,{base64.b64encode(content).decode()}"
 
 
 def _column(id: str, handbook: Any) -> tuple[str, str, Markup, list[Markup]]:

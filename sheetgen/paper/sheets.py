@@ -7,6 +7,7 @@ import re
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cache
+from pathlib import Path
 from typing import Any
 
 from markupsafe import Markup, escape
@@ -93,17 +94,21 @@ def paper_of(imprint: Any) -> Paper:
     return PAPERS.get(imprint.paper.casefold(), PAPERS["a4"])
 
 
+def press(handbook: Any) -> Press:
+    """The compiled templates of a handbook with what only paper needs; a group's own come first."""
+    return _press(handbook.imprint.templates)
+
+
 @cache
-def press() -> Press:
-    """The compiled templates with what only paper needs."""
-    made = Press()
+def _press(own: Path | None) -> Press:
+    made = Press([own] if own else [])
     made.environment.filters.update(symbol=setting.symbol, equation=setting.equation, breakable=breakable)
     return made
 
 
 def style(handbook: Any) -> str:
     """The style sheet of every document of the edition."""
-    return press().render("paper/style.css", paper=paper_of(handbook.imprint)).decode()
+    return press(handbook).render("paper/style.css", paper=paper_of(handbook.imprint)).decode()
 
 
 def manuscript(sheet: Any, handbook: Any, figures: Sequence[Any], level: Level = LEVELS[0]) -> Manuscript:
@@ -112,7 +117,7 @@ def manuscript(sheet: Any, handbook: Any, figures: Sequence[Any], level: Level =
     context = SheetPage(sheet, handbook, shown).context()
     address = page_address(handbook.imprint, f"materials/{sheet.record.slug}.html")
     answer = context["answer"]
-    html = press().render(
+    html = press(handbook).render(
         "paper/sheet.html",
         imprint=handbook.imprint,
         language=words.language(handbook.imprint.language),

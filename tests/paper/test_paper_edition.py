@@ -5,6 +5,7 @@ from __future__ import annotations
 import importlib.util
 import io
 import re
+import shutil
 import sys
 from collections.abc import Iterator
 from typing import Any
@@ -48,7 +49,7 @@ def test_the_first_page_gives_answer_key_numbers_and_cautions(texts):
     first = texts["copper"][0]
     for words in ("Copper", "Key numbers", "7.0315(12)", "The plain answer", "Do not use", "Cautions", "H410"):
         assert words in first
-    assert "https://handbook.marrow-point.example/materials/" in first
+    assert "https://handbook.marrow-point.example/materials/copper.html" in re.sub(r"\s", "", first)
 
 
 def test_the_last_pages_give_every_number_and_its_source(texts):
@@ -257,3 +258,24 @@ def test_a_missing_library_of_the_system_is_said(small_handbook, tmp_path, monke
     assert said.startswith("sheetgen: the paper edition needs a library of the system (cannot load library")
     assert "apt install libpango-1.0-0" in said and said.count("\n") == 1
     assert not (tmp_path / "site").exists()
+
+
+def test_a_group_sets_its_own_title_page(paper_machine, paper_records, tmp_path):
+    folder = tmp_path / "records"
+    shutil.copytree(paper_records, folder)
+    for slug in ("copper", "lead"):
+        (folder / f"{slug}.yaml").unlink()
+    (folder / "templates" / "paper").mkdir(parents=True)
+    (folder / "templates" / "paper" / "front.html").write_text(
+        '{% extends "original/paper/front.html" %}{% block main %}<p>Not for loan.</p>{{ super() }}{% endblock %}'
+    )
+    (folder / "logo.svg").write_text(
+        '<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 2 1"><rect width="2" height="1"/></svg>'
+    )
+    with (folder / "handbook.yaml").open("a") as imprint:
+        imprint.write("templates: templates\nlook: {logo: logo.svg}\n")
+    press(folder, tmp_path / "site", paper=True)
+    book = pypdf.PdfReader(tmp_path / "site" / "handbook.pdf")
+    assert "Not for loan." in book.pages[0].extract_text()
+    root = book.trailer["/Root"]["/StructTreeRoot"]
+    assert "Logo of Marrow Point Thin-Film Group" in [element.get("/Alt") for element in elements(root["/K"])]
