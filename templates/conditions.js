@@ -190,7 +190,7 @@
 
   const form = document.getElementById("conditions");
   if (!form || typeof UNIVERSAL === "undefined" || typeof SHEET === "undefined") return;
-  const { parameters, bounds, still, titles } = SHEET.conditions;
+  const { parameters, rows, bounds, still, titles } = SHEET.conditions;
   const field = (id) => document.getElementById(`set-${id}`);
   const sliders = [...form.querySelectorAll("input[type=range]")];
   const start = new Map([...form.querySelectorAll("input[type=number]")].map((input) => [input.id, input.value]));
@@ -267,13 +267,13 @@
   function showNumbers(found, graded) {
     const outside = [];
     for (const row of document.querySelectorAll("tr[data-follow]")) {
-      const value = found[row.dataset.follow] / Number(row.dataset.factor);
+      const [factor, assumed] = rows[row.dataset.follow];
+      const value = found[row.dataset.follow] / factor;
       const [number, told] = [row.cells[2], row.cells[4]];
       put(number, shown(value));
       number.dataset.value = Number.isFinite(value) ? String(value) : "";
       told.replaceChildren();
       if (!Number.isFinite(value)) continue;
-      const assumed = row.dataset.assumes.split(" ").filter(Boolean);
       const worst = Math.max(0, ...assumed.map((id) => WORST.indexOf(graded[id] || "holds")));
       const because = assumed.filter((id) => worst && WORST.indexOf(graded[id] || "holds") === worst);
       const why = because.map((id) => titles[id]).join(", ");

@@ -88,7 +88,7 @@
     const name = row.querySelector("th").textContent.trim();
     if (place.tagName !== "TD") return name;
     const head = place.closest("table").tHead.rows[0].cells[place.cellIndex];
-    return `${name} at ${head.textContent.trim()}`;
+    return `${name} at ${head.textContent.trim().replace(/\u202f/g, " ")}`;
   }
 
   for (const id of Object.keys(data.numbers)) {

@@ -58,16 +58,17 @@ class Conditions:
         self.record, self.imprint = sheet.record, handbook.imprint
         self.films = handbook.registry.published("specimen")
         self.parameters = self._parameters()
-
-    def context(self) -> dict[str, Any]:
-        """The names that the section's template uses."""
         groups = {
             "Temperature and field": [*self._followed(TEMPERATURE), *self._field()],
             "A cube of that edge": self._followed(SIZE),
             "A film of that thickness": self._film(),
         }
+        self.groups = {title: rows for title, rows in groups.items() if rows}
+
+    def context(self) -> dict[str, Any]:
+        """The names that the section's template uses."""
         return {
-            "groups": {title: rows for title, rows in groups.items() if rows},
+            "groups": self.groups,
             "indicators": self._indicators(),
             "parameters": self.parameters,
             "reference_temperature": self.imprint.reference_temperature,
@@ -174,6 +175,7 @@ class Conditions:
                 still[check.id] = max(still.get(check.id, "holds"), check.standing, key=words.CONDITIONS.index)
         return {
             "parameters": self.parameters,
+            "rows": {row.id: [row.factor, row.assumes] for rows in self.groups.values() for row in rows},
             "bounds": {
                 found["assumption"].indicator: [found["assumption"].id, found["bounds"]] for found in self._indicators()
             },

@@ -42,9 +42,10 @@ def set_conditions(page, values) -> None:
 def shown(page) -> dict[str, float]:
     """The numbers of the section as they are kept beside the printed ones, in SI."""
     rows = page.locator("tr[data-follow]").evaluate_all(
-        "rows => rows.map(row => [row.dataset.follow, row.cells[2].dataset.value, row.dataset.factor])"
+        "rows => rows.map(row => [row.dataset.follow, row.cells[2].dataset.value, "
+        "SHEET.conditions.rows[row.dataset.follow][0]])"
     )
-    return {id: float(value) * float(factor) for id, value, factor in rows if value}
+    return {id: float(value) * factor for id, value, factor in rows if value}
 
 
 def expected(sheet, temperature, field, size, specularity, grain_size, reflection) -> dict[str, float]:

@@ -39,7 +39,7 @@ def test_uncertainty_that_the_draws_refute_shows_their_interval(wide):
     page = site["materials/wide.html"].decode()
     row = re.search(r'<tr id="relaxation_time">.*?</tr>', page, re.DOTALL)[0]
     low, high = (float(end) for end in re.search(r'class="interval">95\u202f%: ([^<\s]+) to ([^<\s]+)<', row).groups())
-    assert (low, high) == pytest.approx(entry["coverage_interval"], rel=0.02)
+    assert (low, high) == pytest.approx(entry["coverage_interval"], abs=0.5)  # to whole fs
 
 
 def test_valid_uncertainty_shows_no_interval():
