@@ -121,6 +121,6 @@
   addEventListener("hashchange", fromAddress);
   page.hidden = false;
   fromAddress();
-  // Who comes by the link of the masthead wants to type.
-  if (location.hash === "#search") input.focus();
+  // Who comes by the link of the masthead wants to type; the browser's own jump to the place would take the focus away.
+  if (location.hash === "#words") for (const moment of ["DOMContentLoaded", "load"]) addEventListener(moment, () => input.focus());
 })();
