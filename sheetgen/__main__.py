@@ -9,6 +9,9 @@ import sys
 def main() -> None:
     """Run one command and leave with its exit status."""
     sys.unraisablehook = _deliver_again
+    if sys.flags.optimize > 1:
+        sys.stderr.write("sheetgen: -OO takes away docstrings, which are the titles of the quantities; leave it out\n")
+        sys.exit(3)
     try:
         from sheetgen.cli import run
 

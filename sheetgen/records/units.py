@@ -108,6 +108,8 @@ def _ascii(text: str) -> str:
 
 _TOKEN = re.compile(r"\s*(?P<token>[A-Za-z_]+|(?:\^|\*\*)\s*(?:\(\s*[+-]?\d{1,9}\s*\)|[+-]?\d{1,9})|[*/()]|1(?![\d.]))")
 
+_NO_EXPONENT = re.compile(r"[^\d+-]")  # blanks of any alphabet may stand about an exponent
+
 
 @dataclass(slots=True)
 class _Part:
@@ -174,7 +176,7 @@ class _Expression:
         if following is None or following[0] != "^":
             return part
         self.position += 1
-        exponent = int(following.strip("^() "))
+        exponent = int(_NO_EXPONENT.sub("", following))
         if abs(exponent) > MAXIMUM_EXPONENT:
             found = f"the unit {shown(self.written)} has the exponent {exponent}"
             raise UnreadableError(f"{found}; expected at most {MAXIMUM_EXPONENT}")

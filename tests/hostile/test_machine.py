@@ -117,6 +117,11 @@ def test_a_record_that_may_not_be_read(small_handbook):
     assert "copper.yaml: permission denied" in one_line(bound_by_rights("proof", small_handbook)).lower()
 
 
+def test_a_python_without_docstrings_is_refused(small_handbook):
+    command = [sys.executable, "-OO", "-m", "sheetgen", "proof", str(small_handbook)]
+    assert "-OO" in one_line(subprocess.run(command, capture_output=True, text=True, check=False))
+
+
 LOSE = """
 import signal, sys, weakref
 import sheetgen.cli as cli

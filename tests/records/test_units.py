@@ -136,3 +136,8 @@ def test_no_text_does_anything_but_be_a_unit_or_a_complaint(text):
     else:
         assert unit.factor > 0
     assert time.perf_counter() - began < 1
+
+
+@pytest.mark.parametrize("blank", ["\x1c", "\x1e", "\u2003", "\u3000", "\t"])
+def test_any_blank_may_stand_before_an_exponent(blank):
+    assert read_unit(f"m^{blank}3") == read_unit("m^3")
