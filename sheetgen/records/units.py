@@ -125,7 +125,7 @@ class _Part:
             powers[base] = powers.get(base, 0) + exponent * power
         try:
             return _Part(self.factor * other.factor**exponent, powers)
-        except OverflowError:
+        except (OverflowError, ZeroDivisionError):  # a factor that has vanished is as far out as one without bounds
             return _Part(math.inf, powers)
 
 

@@ -141,3 +141,12 @@ def test_no_text_does_anything_but_be_a_unit_or_a_complaint(text):
 @pytest.mark.parametrize("blank", ["\x1c", "\x1e", "\u2003", "\u3000", "\t"])
 def test_any_blank_may_stand_before_an_exponent(blank):
     assert read_unit(f"m^{blank}3") == read_unit("m^3")
+
+
+VANISHING = ["m/(ae^9 ae^9 ae^9)", "1/B/1/B/d/ae9/ee999/", "1/(qe^12 qe^12)", "(qe^12)^12", "m/(Qm^12)^12"]
+
+
+@pytest.mark.parametrize("unit", VANISHING)
+def test_a_unit_beyond_all_numbers_is_refused(unit):
+    with pytest.raises(UnreadableError):
+        read_unit(unit)
