@@ -146,5 +146,8 @@ def sheet(classes: frozenset[str]) -> str:
 
 
 def whole_sheet() -> str:
-    """The style sheet for any number of figures that one page shows inline."""
-    return sheet(frozenset(_CLASS.findall("".join(_rules()))))
+    """The style sheet for any number of figures that one page shows inline.
+
+    `paint-order` is left to an attribute of the notes: SVG knows it, the CSS of pages does not yet.
+    """
+    return sheet(frozenset(_CLASS.findall("".join(_rules())))).replace("paint-order:stroke;", "")
