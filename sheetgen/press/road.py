@@ -16,6 +16,7 @@ from sheetgen.press.publishing import Report, publish
 if TYPE_CHECKING:
     from sheetgen.figures import Figure
     from sheetgen.handbook import Handbook
+    from sheetgen.records import Imprint
     from sheetgen.sheet import Sheet
 
 Progress = Callable[[str, int, int], None]
@@ -57,8 +58,8 @@ def press(
     inputs = fingerprints(folder)
     progress("reading records", 0, 0)
     handbook = Handbook.load(folder, draws=draws)
-    if earlier := handbook.imprint.previous_edition:
-        inputs[earlier.relative_to(folder).as_posix()] = digest(earlier.read_bytes())
+    for path in _named_by_the_imprint(folder, handbook.imprint):
+        inputs[path.relative_to(folder).as_posix()] = digest(path.read_bytes())
     figures = _figures(handbook, progress, draw)
     files = chain(documents(handbook, figures), lay_out(handbook, figures, paper=paper))
     files = _counted(files, progress)
@@ -72,6 +73,18 @@ def press(
         waiting=lambda: progress("waiting for another press of this site", 0, 0),
     )
     return Pressed(len(handbook.sheets), tuple(handbook.remarks), report)
+
+
+def _named_by_the_imprint(folder: Path, imprint: Imprint) -> Iterator[Path]:
+    """The further files that a handbook is made from because its imprint says so."""
+    if imprint.previous_edition:
+        yield imprint.previous_edition
+    if imprint.look.logo:
+        yield folder / imprint.look.logo[0]
+    if imprint.pages:
+        yield from (path for path in sorted(folder.glob("*/*.md")) if path.is_file())
+    if imprint.templates:
+        yield from (path for path in sorted(imprint.templates.rglob("*")) if path.is_file())
 
 
 def _figures(

@@ -384,8 +384,8 @@ def measured_film_ratio(specimen_resistivity, reference_resistivity):
 def _film_factor(path, thickness, specularity, alpha):
     """ρ/ρ_0 of whichever parts are stated; NaN where neither is."""
     kappa = thickness / path
-    neither = np.isnan(specularity) & np.isnan(alpha)
-    stated_alpha = np.where(np.isnan(alpha), 0.0, alpha)
-    # Fully specular surfaces scatter nothing, so p = 1 leaves the grain part alone.
-    stated_specularity = np.where(np.isnan(specularity), 1.0, specularity)
-    return np.where(neither, np.nan, films.film_factor(kappa, stated_alpha, stated_specularity))
+    no_grains = np.isnan(alpha) | (alpha == 0)
+    both = films.film_factor(kappa, alpha, specularity)
+    # One part alone has an integral of its own, which holds for any thickness.
+    surface, grain = films.surface_factor(kappa, specularity), films.grain_factor(alpha)
+    return np.where(no_grains, surface, np.where(np.isnan(specularity), grain, both))

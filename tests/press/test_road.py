@@ -129,3 +129,15 @@ def test_real_press_killed_at_any_time_leaves_the_old_site_or_the_new(small_hand
     press(small_handbook, site)
     assert contents(site) == new
     assert sorted(path.name for path in tmp_path.iterdir()) == ["measured", "records", "site"]
+
+
+def test_manifest_lists_what_the_imprint_names_besides_records(small_handbook, tmp_path):
+    (small_handbook / "pages").mkdir()
+    (small_handbook / "pages" / "clean-room.md").write_text("# Clean room\n\nWear a coat.\n")
+    (small_handbook / "templates").mkdir()
+    (small_handbook / "templates" / "about.html").write_text('{% extends "original/about.html" %}')
+    imprint = small_handbook / "handbook.yaml"
+    imprint.write_text(imprint.read_text() + "pages: pages\ntemplates: templates\n")
+    press(small_handbook, tmp_path / "site")
+    listed = json.loads((tmp_path / "site" / "manifest.json").read_text())["inputs"]
+    assert {"pages/clean-room.md", "templates/about.html"} <= listed.keys()
