@@ -26,18 +26,45 @@ def millimetres(printed) -> tuple[int, int]:
     return tuple(round(float(points) * 25.4 / 72) for points in printed.mediabox[2:])
 
 
-@pytest.mark.parametrize("slug", ["copper", "sodium", "titanium-nitride", "gallium-arsenide-quantum-well"])
-def test_sheet_takes_a_few_full_pages(browser, pressed_site, slug):
+MARGINS = 24  # mm: left and right of a sheet together
+LEAST_LINES = 20  # on every page but the last: a page with less is mostly empty
+
+
+def millimetres_wide(page, width: int) -> float:
+    """How wide the page lies on paper when it is given `width` mm; wider than that, the browser would shrink it."""
+    page.set_viewport_size({"width": round(width * 96 / 25.4), "height": 1000})
+    page.emulate_media(media="print")
+    return page.evaluate("document.documentElement.scrollWidth") * 25.4 / 96
+
+
+def test_every_sheet_takes_two_to_four_full_pages(browser, pressed_site):
+    found = {}
     with watched_page(browser) as (page, troubles):
-        page.goto((pressed_site / "materials" / f"{slug}.html").as_uri())
-        pages = printed_pages(page)
+        for sheet in sorted((pressed_site / "materials").glob("*.html")):
+            if sheet.stem != "index":
+                page.goto(sheet.as_uri())
+                found[sheet.stem] = printed_pages(page)
         assert troubles == []
+    assert len(found) == len(list((pressed_site / "data" / "materials").glob("*.json")))
+    assert {slug: len(pages) for slug, pages in found.items() if not 2 <= len(pages) <= 4} == {}
+    assert {millimetres(one) for pages in found.values() for one in pages} == {PAPERS["A4"]}
+    texts = {slug: [one.extract_text() for one in pages] for slug, pages in found.items()}
+    assert [slug for slug, pages in texts.items() if "Cautions" not in pages[0] or "plain answer" not in pages[0]] == []
+    empty = {slug for slug, pages in texts.items() for text in pages[:-1] if len(text.splitlines()) < LEAST_LINES}
+    assert empty == set()
+
+
+@pytest.mark.parametrize("slug", ["copper", "titanium-nitride", "gallium-arsenide-quantum-well"])
+def test_sheet_names_itself_and_is_not_shrunk(browser, pressed_site, slug):
     data = json.loads((pressed_site / "data" / "materials" / f"{slug}.json").read_text(encoding="utf-8"))
-    assert 2 <= len(pages) <= 2 + len(data["figures"]) / 2
-    texts = [one.extract_text() for one in pages]
-    assert {millimetres(one) for one in pages} == {PAPERS["A4"]}
-    assert data["name"] in texts[0]
-    assert min(len(text) for text in texts) > 60
+    with watched_page(browser) as (page, _):
+        page.goto((pressed_site / "materials" / f"{slug}.html").as_uri())
+        texts = [one.extract_text() for one in printed_pages(page)]
+        for width, _ in PAPERS.values():
+            assert millimetres_wide(page, width - MARGINS) <= width - MARGINS + 0.3
+    assert all(data["name"] in text and data["edition"] in text for text in texts)
+    assert all(f"page {number} of {len(texts)}" in text for number, text in enumerate(texts, 1))
+    assert f"materials/{slug}.html" in texts[0]
 
 
 @pytest.mark.parametrize("path, most", [("index.html", 4), ("methods.html", 16), ("sources.html", 20)])
@@ -58,6 +85,18 @@ def test_imprint_chooses_the_paper(browser, small_handbook, tmp_path, paper):
         page.goto((tmp_path / "site" / "materials" / "copper.html").as_uri())
         pages = printed_pages(page)
     assert {millimetres(one) for one in pages} == {PAPERS[paper]}
+
+
+def test_fullest_sheet_fits_letter_too(browser, pressed_site):
+    style = (pressed_site / "style" / "handbook.css").read_text(encoding="utf-8")
+    assert "size: A4;" in style
+    with watched_page(browser) as (page, _):
+        on_letter = style.replace("size: A4;", "size: letter;")
+        page.route("**/handbook.css", lambda route: route.fulfill(body=on_letter, content_type="text/css"))
+        page.goto((pressed_site / "materials" / "copper.html").as_uri())
+        pages = printed_pages(page)
+    assert {millimetres(one) for one in pages} == {PAPERS["letter"]}
+    assert 2 <= len(pages) <= 4
 
 
 def test_every_word_of_the_sheet_is_on_paper(browser, pressed_site):
