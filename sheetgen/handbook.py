@@ -138,18 +138,15 @@ class Handbook:
 
 
 def _without_code(folder: Folder) -> Folder:
-    """The folder as if its imprint named no own quantities; bounds of own assumptions go with them."""
-    imprint = folder.imprint
-    if imprint.own_quantities is None:
-        return folder
-    ours = {*THRESHOLDS, *(assumption.id for assumption in registry().assumptions)}
-    thresholds = {name: bound for name, bound in imprint.thresholds.items() if name in ours}
-    message = "own quantities are not trusted here: the file is not run, and what it declares is not derived."
-    return replace(
-        folder,
-        imprint=replace(imprint, own_quantities=None, thresholds=thresholds),
-        remarks=(*folder.remarks, Fault(Place(str(imprint.own_quantities)), message, "remark")),
-    )
+    """The folder as if its imprint named no own quantities or templates; bounds of own assumptions go with them."""
+    imprint, remarks = folder.imprint, list(folder.remarks)
+    if imprint.own_quantities:
+        ours = {*THRESHOLDS, *(assumption.id for assumption in registry().assumptions)}
+        message = "own quantities are not trusted here: the file is not run, and what it declares is not derived."
+        remarks.append(Fault(Place(str(imprint.own_quantities)), message, "remark"))
+        thresholds = {name: bound for name, bound in imprint.thresholds.items() if name in ours}
+        imprint = replace(imprint, own_quantities=None, thresholds=thresholds)
+    return replace(folder, imprint=replace(imprint, templates=None), remarks=tuple(remarks))
 
 
 def registry_of(imprint: Imprint) -> Registry:

@@ -12,6 +12,7 @@ from sheetgen.records.nodes import Node, found
 from sheetgen.records.values import Reader, text_of
 
 MAXIMUM_BYTES = 200_000
+MAXIMUM_LEVELS = 50
 _NAME = re.compile(r"[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}\.(?:svg|png)")
 _SVG = "http://www.w3.org/2000/svg"
 _PNG = b"\x89PNG\r\n\x1a\n"
@@ -79,13 +80,15 @@ def clean_svg(text: str) -> bytes:
     return ElementTree.tostring(root, encoding="unicode").encode()
 
 
-def _clean(element: ElementTree.Element) -> None:
+def _clean(element: ElementTree.Element, levels: int = MAXIMUM_LEVELS) -> None:
+    if not levels:
+        raise ValueError(f"it nests groups deeper than {MAXIMUM_LEVELS} levels")
     element.attrib = {
         name: value for name, value in element.attrib.items() if name in _ATTRIBUTES and not _REFERENCE.search(value)
     }
     for child in list(element):
         namespace, _, name = child.tag.rpartition("}") if isinstance(child.tag, str) else ("", "", "")
         if namespace == f"{{{_SVG}" and name in _ELEMENTS:
-            _clean(child)
+            _clean(child, levels - 1)
         else:
             element.remove(child)

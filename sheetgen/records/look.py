@@ -26,7 +26,7 @@ _KEYS = ("logo", *_GROUNDS)
 _COLOUR = re.compile(r"#[0-9A-Fa-f]{6}")
 _FOLDER = re.compile(r"[A-Za-z0-9_-][A-Za-z0-9._-]{0,63}")
 _SLUG = re.compile(r"[a-z0-9]+(?:-[a-z0-9]+)*")
-_HEADING = re.compile(r"#[ \t]+(\S.*?)[ \t#]*(?:\n|$)")
+_HEADING = re.compile(r"#[ \t]+([^\s#][^\n]*)(?:\n|$)")
 _MOST_PAGES = 50
 
 
@@ -150,4 +150,4 @@ def _page(file: Path, folder: Path, reader: Reader) -> OwnPage | None:
         reader.fault(place, "a page begins with its title; expected a first line such as '# Safety'.")
         return None
     check_notes(Scalar(text, False, place), reader)
-    return OwnPage(file.stem, heading[1], text[heading.end() :])
+    return OwnPage(file.stem, heading[1].rstrip(" \t#"), text[heading.end() :])

@@ -236,6 +236,45 @@ LIBRARIES = {
         {"handbook.yaml": "title: T\nprevious edition: " + "a/" * 140 + "a\n"}, "handbook.yaml:2:19: previous edition"
     ),
 }  # fmt: skip
+PICTURE = '<svg xmlns="http://www.w3.org/2000/svg">'
+LOOKS = {
+    "a logo of nested groups": (
+        {
+            "handbook.yaml": "title: T\nlook: {logo: a.svg}\n",
+            "a.svg": PICTURE + "<g>" * 25_000 + "</g>" * 25_000 + "</svg>",
+        },
+        "a.svg:1:1: it nests groups deeper than 50 levels",
+    ),
+    "a logo of entities": (
+        {
+            "handbook.yaml": "title: T\nlook: {logo: a.svg}\n",
+            "a.svg": f'<!DOCTYPE svg [<!ENTITY a "aaaa"><!ENTITY b "&a;&a;">]>{PICTURE}&b;</svg>',
+        },
+        "a.svg:1:1: it declares a document type",
+    ),
+    "a logo without an end": (
+        {"handbook.yaml": "title: T\nlook: {logo: a.svg}\n", "a.svg": PICTURE + "<g>" * 60_000},
+        "a.svg:1:180041: not an SVG",
+    ),
+    "a logo elsewhere": (
+        {"handbook.yaml": "title: T\nlook: {logo: a.svg}\n", "a.svg": Path("/etc/passwd")},
+        "handbook.yaml:2:14: logo: found",
+    ),
+    "pages elsewhere": (
+        {"handbook.yaml": "title: T\npages: pages\n", "pages": Path("/etc")}, "handbook.yaml:2:8: pages: found"
+    ),
+    "a page elsewhere": (
+        {"handbook.yaml": "title: T\npages: pages\n", "pages/a.md": Path("/etc/passwd")},
+        "pages/a.md: a link that leads out of the folder",
+    ),
+    "a page of marks": (
+        {"handbook.yaml": "title: T\npages: pages\n", "pages/a.md": "# a" + "#" * 19_900 + "x\n" + "- " * 40},
+        "pages/a.md:1:1: notes: line 2 of the notes is nested",
+    ),
+    "templates elsewhere": (
+        {"handbook.yaml": "title: T\ntemplates: ../x\n"}, "handbook.yaml:2:12: templates: found"
+    ),
+}  # fmt: skip
 NOTES = {
     "opening brackets": notes("[" * 19_000, "19000 opening brackets; expected at most 100"),
     "pictures": notes("![" * 9000, "9000 opening brackets; expected at most 100"),
@@ -251,6 +290,6 @@ NOTES = {
     "definitions": notes("a\n: b\n" * 400, "400 definitions; expected at most 50"),
     "a book": notes("word " * 9000, "found"),
 }
-BOMBS = {**YAML, **FILES, **NAMES, **NUMBERS, **LIBRARIES, **NOTES}
+BOMBS = {**YAML, **FILES, **NAMES, **NUMBERS, **LIBRARIES, **LOOKS, **NOTES}
 # Files whose names are hidden from the handbook, so that nothing at all is wrong.
 HARMLESS = {"dots", "a parent"}

@@ -88,6 +88,15 @@ def test_untrusted_records_are_held_to_everything_else(strangers):
     assert "copper.yaml:4:12: " in run.stderr
 
 
+def test_untrusted_templates_are_not_even_kept(strangers):
+    from sheetgen.handbook import Handbook
+
+    with (strangers / "handbook.yaml").open("a") as imprint:
+        imprint.write("templates: templates\n")
+    assert Handbook.load(strangers).imprint.templates == strangers / "templates"
+    assert Handbook.load_untrusted(strangers).imprint.templates is None
+
+
 def test_bounds_of_own_assumptions_are_left_out_with_them(strangers):
     imprint = named(strangers) / "handbook.yaml"
     text = imprint.read_text(encoding="utf-8")
