@@ -86,4 +86,4 @@ def test_documents_name_files_that_exist(root):
 def test_targets_of_the_makefile_are_documented(root):
     text = (root / "Makefile").read_text(encoding="utf-8")
     targets = re.search(r"^\.PHONY: (.*)$", text, re.MULTILINE)[1].split()
-    assert targets == re.findall(r"^(\w+):.*## ", text, re.MULTILINE)
+    assert targets == re.findall(r"^([\w-]+):.*## ", text, re.MULTILINE)
