@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 import datetime
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
 from pathlib import Path
+from types import MappingProxyType
 from typing import Any
 
 import numpy as np
@@ -186,11 +187,15 @@ class _Road:
         materials = self._rows(material_batch(group, self.imprint), "material", dimension)
         specimens: dict[str, list[Row]] = {record.slug: [] for record in group}
         if any(record.specimens for record in group):
-            for row in self._rows(specimen_batch(group, self.imprint), "specimen", dimension):
+            of = {row.record.slug: row for row in materials}
+            for row in self._rows(specimen_batch(group, self.imprint), "specimen", dimension, of):
                 specimens[row.record.slug].append(row)
         return {row.record.slug: Sheet(row, specimens[row.record.slug], self.imprint.edition) for row in materials}
 
-    def _rows(self, batch: Batch, scope: str, dimension: int) -> Iterable[Row]:
+    def _rows(
+        self, batch: Batch, scope: str, dimension: int, materials: Mapping[str, Row] = MappingProxyType({})
+    ) -> list[Row]:
         derived = propagate(self.declared.plans[scope, dimension], batch)
         derivation = Derivation(derived, Indicators(derived), self.declared, self.imprint, self.draws, self.seed)
-        return [Row(derivation, row, scope) for row in range(len(batch.records))]
+        owners = [materials.get(record.slug) for record in batch.records]
+        return [Row(derivation, row, scope, owner) for row, owner in enumerate(owners)]

@@ -42,18 +42,18 @@ class Derivation:
     draws: int = 0
     seed: int = 0
 
-    def limits(self, row: int) -> Limits:
-        """The assumptions of one row."""
-        return Limits(self.indicators, row, self.imprint, self.registry)
+    def limits(self, row: int, material: Limits | None = None) -> Limits:
+        """The assumptions of one row; a specimen's with those of its material behind them."""
+        return Limits(self.indicators, row, self.imprint, self.registry, material)
 
 
 class Row:
     """One row of a derivation: a material, or one of its specimens."""
 
-    def __init__(self, derivation: Derivation, row: int, scope: str):
+    def __init__(self, derivation: Derivation, row: int, scope: str, material: Row | None = None):
         self.derivation, self.row, self.scope = derivation, row, scope
         self.derived, self.imprint = derivation.derived, derivation.imprint
-        self.limits = derivation.limits(row)
+        self.limits = derivation.limits(row, None if material is None else material.limits)
         self.record: Record = self.derived.batch.records[row]
         self.specimen: Specimen | None = self.derived.batch.specimens[row]
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass, replace
 from pathlib import Path
 from tempfile import TemporaryDirectory
@@ -17,6 +18,7 @@ from sheetgen.drafting.suggestions import read_formula
 from sheetgen.faults import FaultsError
 from sheetgen.records import Crystal, Record, read_folder
 from sheetgen.records.files import HIDDEN
+from sheetgen.records.schema import NAME_PATTERN
 
 LONGEST_NAME = 200
 _STAGED_IMPRINT = "title: Staging\n"
@@ -100,7 +102,8 @@ def _drafted(record: Path, material: Material, written: tuple[Path, ...]) -> Dra
 
 def _room(folder: Path, material: Material) -> Path:
     """The path of the new record, where there is room for it."""
-    if HIDDEN.search(material.name) or not 0 < len(material.name.strip()) <= LONGEST_NAME:
+    visible = not HIDDEN.search(material.name) and re.search(NAME_PATTERN, material.name)
+    if not visible or len(material.name.strip()) > LONGEST_NAME:
         raise DraftRefusedError(f"--name is no name; expected up to {LONGEST_NAME} visible characters, such as Copper.")
     slug = slug_of(material.name) or slug_of(material.formula)
     if not slug:

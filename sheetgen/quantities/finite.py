@@ -238,7 +238,8 @@ def film_subbands(electron_density, specimen_thickness, degeneracy):
 def film_fermi_energy(electron_density, specimen_thickness, degeneracy, effective_mass):
     """Fermi energy of the film at the density of the bulk
 
-    Hard walls at the stated thickness d.
+    Hard walls at the stated thickness d. Subbands open within the uncertainty of d, so what it adds is half the
+    difference of the values at d ± u(d) and not a slope.
     """
     wavevector = films.film_fermi_wavevector(electron_density, specimen_thickness, degeneracy)
     return (c.hbar * wavevector) ** 2 / (2 * effective_mass)

@@ -15,6 +15,13 @@ DRUDE = ("defined_paths", "normal_state", "isotropy")
 DEGENERATE_PATHS = FLAT + ("degenerate_gas",) + DRUDE
 LORENZ = np.pi**2 * c.k**2 / (3 * c.e**2)
 FREQUENCY = 1e9  # Hz, of the skin depth
+THERMOPOWER_RATIO = Comparison(
+    measured="thermopower",
+    ratio="thermopower ratio",
+    above="the relaxation time depends on energy, or phonons drag the electrons along",
+    below="the relaxation time depends on energy, in the sense that weakens the effect",
+    opposite="the relaxation time falls with energy, or the Fermi surface touches zone faces: the sign turns",
+)
 
 
 @step()
@@ -260,13 +267,7 @@ def electron_thermal_conductivity(lorenz_number, resistivity_temperature, measur
     source="ashcroft1976, ch. 2",
     assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state", "isotropy"),
     listed_by="temperature",
-    comparison=Comparison(
-        measured="thermopower",
-        ratio="thermopower ratio",
-        above="the relaxation time depends on energy, or phonons drag the electrons along",
-        below="the relaxation time depends on energy, in the sense that weakens the effect",
-        opposite="the relaxation time falls with energy, or the Fermi surface touches zone faces: the sign turns",
-    ),
+    comparison=THERMOPOWER_RATIO,
     **TRANSPORT,
 )
 def thermopower(charge_sign, temperature, fermi_temperature):
@@ -285,6 +286,7 @@ def thermopower(charge_sign, temperature, fermi_temperature):
     source="ashcroft1976, ch. 13",
     assumes=FLAT + ("degenerate_gas", "elastic_scattering", "normal_state", "isotropy"),
     listed_by="temperature",
+    comparison=THERMOPOWER_RATIO,
     dimensions=(2,),
     **TRANSPORT,
 )

@@ -39,6 +39,24 @@ def merged(sites: Sequence[Site]) -> tuple[Site, ...]:
     return tuple(site for index, site in enumerate(sites) if first[index] == index)
 
 
+def combined(atoms: Sequence[Site]) -> list[Site]:
+    """The atoms as listed, with the occupancies of one element at one listed position added, up to a full site.
+
+    A mixed valence or an isotope is written so; a full atom listed twice still counts once.
+    """
+    found: list[Site] = []
+    for atom in atoms:
+        apart = [_wrapped(np.subtract(other.position, atom.position)) for other in found]
+        near = [np.all(np.abs(step) <= FRACTION_TOLERANCE) for step in apart]
+        same = [i for i, other in enumerate(found) if near[i] and other.element == atom.element]
+        if same:
+            other = found[same[0]]
+            found[same[0]] = Site(other.element, other.position, min(other.occupancy + atom.occupancy, 1.0))
+        else:
+            found.append(atom)
+    return found
+
+
 def distinct(positions: np.ndarray) -> np.ndarray:
     """The rows of positions (N, 3) with coincident ones counted once."""
     return positions[_coincident(positions).argmax(axis=1) == np.arange(len(positions))]

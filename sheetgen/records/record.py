@@ -12,7 +12,7 @@ from sheetgen.records.markdown import check_notes
 from sheetgen.records.measured import check_residual, measured_inputs, optical_inputs, read_measured, read_optical
 from sheetgen.records.model import Caution, Crystal, Electrons, Record, Review, Value
 from sheetgen.records.nodes import Listing, Scalar, Table
-from sheetgen.records.shape import has_record_shape
+from sheetgen.records.shape import has_record_shape, prune
 from sheetgen.records.sites import check_content
 from sheetgen.records.specimens import read_specimens, specimen_inputs
 from sheetgen.records.structure import read_structure
@@ -26,9 +26,31 @@ def read_record(path: Path, text: str, reader: Reader, folder: Path, reference: 
     log = FaultLog()
     own = Reader(log, reader.sources)
     root = read_tree(text, str(path), log)
-    record = _record(root, path, own, folder, reference) if root and has_record_shape(root, log) else None
+    record = None
+    if root is not None:
+        if has_record_shape(root, log):
+            record = _record(root, path, own, folder, reference)
+        else:
+            _read_what_is_left(root, path, own, folder, reference)
     reader.log.entries += log.entries
     return record if not log.faults else None
+
+
+def _read_what_is_left(root: Table, path: Path, reader: Reader, folder: Path, reference: float) -> None:
+    """Log the further faults of a misshapen record, in sections that what had to be taken out cannot have upset."""
+    upset = prune(root)
+    if upset is None:
+        return
+    if not upset & {"formula", "structure", "electrons"}:
+        _record(root, path, reader, folder, reference)
+        return
+    if "electrons" not in upset:
+        electrons = root.node("electrons")
+        flat = isinstance(electrons, Table) and text_of(electrons.node("dimension")) == "2"
+        table = root.node("measured") or Table({}, root.place)
+        read_measured(table, 2 if flat else 3, reader)
+        read_optical(table, reader)
+    read_specimens(root.node("specimens") or Listing([], root.place), None, reader)
 
 
 def _record(root: Table, path: Path, reader: Reader, folder: Path, reference: float) -> Record | None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Iterator
+from contextlib import suppress
 from itertools import islice
 from typing import TYPE_CHECKING
 
@@ -19,21 +20,61 @@ if TYPE_CHECKING:
     from jsonschema.exceptions import ValidationError
 
 MAXIMUM_FAULTS = 50
+MAXIMUM_PRUNINGS = 4
 
 
 def has_record_shape(root: Table, log: FaultLog) -> bool:
     """Whether a tree has the shape of a record; where it has not, every fault of it is logged."""
-    data = plain_data(root)
-    structure = data.get("structure")
-    if isinstance(structure, dict) and isinstance(structure.get("lattice"), str):
-        structure["lattice"] = canonical_lattice(structure["lattice"])
-    if fits(data, canonical_schema()):
+    if fits(data := _data(root), canonical_schema()):
         return True
     errors = islice(validator().iter_errors(data), MAXIMUM_FAULTS)
     faults = dict.fromkeys(fault for error in errors for fault in _faults(error, root))
     for place, message in faults:
         log.fault(place, message)
     return not faults
+
+
+def prune(root: Table) -> set[str] | None:
+    """Take out of a tree what keeps it from the shape of a record, so that the faults of the rest are found as well.
+
+    The keys of the sections that lost something, or None where no record is left.
+    """
+    upset: set[str] = set()
+    for _ in range(MAXIMUM_PRUNINGS):
+        if fits(_data(root), canonical_schema()):
+            return upset
+        errors = {tuple(error.absolute_path): error for error in validator().iter_errors(_data(root))}
+        # The deepest first, and of a list the last first, so that no removal moves what another error names.
+        for path in sorted(errors, key=lambda path: (-len(path), [-s if isinstance(s, int) else 0 for s in path])):
+            unknown = errors[path].validator == "additionalProperties"
+            if not path and not unknown:
+                return None
+            upset.update([str(path[0])] if path else [])
+            with suppress(KeyError, IndexError):
+                _take_out(root, path, errors[path].schema.get("properties") if unknown else None)
+    return None
+
+
+def _take_out(root: Table, path: tuple[str | int, ...], known: dict | None) -> None:
+    """Remove the node at a path, or of the mapping there each key that is not among the known ones."""
+    if known is not None:
+        table = _node_at(root, path)
+        for key in set(table.entries) - set(known):
+            del table.entries[key]
+        return
+    parent = _node_at(root, path[:-1])
+    if isinstance(parent, Table):
+        del parent.entries[path[-1]]
+    else:
+        del parent.items[path[-1]]
+
+
+def _data(root: Table) -> dict:
+    data = plain_data(root)
+    structure = data.get("structure")
+    if isinstance(structure, dict) and isinstance(structure.get("lattice"), str):
+        structure["lattice"] = canonical_lattice(structure["lattice"])
+    return data
 
 
 def _faults(error: ValidationError, root: Table) -> Iterator[tuple[Place, str]]:

@@ -8,7 +8,7 @@ from collections.abc import Iterable, Mapping
 import numpy as np
 
 from sheetgen.faults import Place, did_you_mean
-from sheetgen.records.cells import merged, snapped
+from sheetgen.records.cells import combined, merged, snapped
 from sheetgen.records.elements import elements
 from sheetgen.records.lattices import CENTRINGS, Lattice
 from sheetgen.records.model import Site
@@ -49,7 +49,7 @@ def centred(basis: Iterable[Site], lattice: Lattice) -> tuple[Site, ...]:
     return merged(
         [
             Site(atom.element, tuple(position), atom.occupancy)
-            for atom in basis
+            for atom in combined(list(basis))
             for position in snapped(np.array(atom.position) + points).tolist()
         ]
     )

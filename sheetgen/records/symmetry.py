@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from sheetgen.records.cells import MAXIMUM_SITES, distinct, merged, snapped
+from sheetgen.records.cells import MAXIMUM_SITES, combined, distinct, merged, snapped
 from sheetgen.records.lattices import SHAPES, CellShape, lattice_name
 from sheetgen.records.model import Site
 from sheetgen.records.unreadable import UnreadableError, shown
@@ -79,7 +79,7 @@ def expanded(atoms: Sequence[Site], operations: Iterable[gemmi.Op]) -> tuple[Sit
     turns = np.array([operation.rot for operation in operations]) / gemmi.Op.DEN
     shifts = np.array([operation.tran for operation in operations]) / gemmi.Op.DEN
     sites: list[Site] = []
-    for atom in atoms:
+    for atom in combined(atoms):
         images = distinct(snapped(turns @ np.array(atom.position) + shifts))
         sites += [Site(atom.element, tuple(image), atom.occupancy) for image in images.tolist()]
         if len(sites) > MAXIMUM_SITES:

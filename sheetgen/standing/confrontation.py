@@ -118,11 +118,11 @@ class Confronter:
         return self.derived.number(id, self.row, entry)
 
     def _standing(self, case: Case, ratio: float | None, uncertainty: float | None) -> tuple[str, str]:
-        broken = self.limits.broken(case.definition, case.entry or 0)
-        if broken is not None:
-            return OUTSIDE, f"{broken.title.lower()} is broken: {broken.indicator} = {broken.value:.3g}"
         if ratio is None:
             return UNCHECKED, case.why
+        broken = self.limits.broken(case.definition, case.entry)
+        if broken is not None:
+            return OUTSIDE, f"{broken.title.lower()} is broken: {broken.indicator} = {broken.value:.3g}"
         return self.bounds.grade(ratio, uncertainty or 0.0), case.definition.comparison.ratio
 
 

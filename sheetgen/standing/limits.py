@@ -68,7 +68,11 @@ class Indicators:
 class Limits:
     """All evaluations of the assumptions for one row of a batch."""
 
-    def __init__(self, indicators: Indicators, row: int, imprint: Imprint, registry: Registry):
+    def __init__(
+        self, indicators: Indicators, row: int, imprint: Imprint, registry: Registry, material: Limits | None = None
+    ):
+        """`material` holds the limits of the material that a specimen is made of: they bind its lines as well."""
+        self._material = material
         self._indicators, self._row, self._imprint, self._registry = indicators, row, imprint, registry
         self._derived = indicators.derived
         self.checks = tuple(check for a in self._derived.plan.assumptions for check in self._evaluations(a))
@@ -78,7 +82,7 @@ class Limits:
         for check in self.checks:
             if check.standing == BROKEN and check.id in definition.assumes and self._concerns(check, definition, entry):
                 return check
-        return None
+        return None if self._material is None else self._material.broken(definition, 0)
 
     def _evaluations(self, assumption: Assumption) -> Iterator[AssumptionCheck]:
         values = self._indicators.values[id(assumption)]

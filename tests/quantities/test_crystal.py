@@ -106,3 +106,12 @@ def test_mass_density_of_an_ordered_alloy(tmp_path):
     assert sheet.entries("mass_density")[0]["value"] == pytest.approx(grams / 2.95e-8**3, rel=1e-12)
     assert sheet.missing["packing_fraction"] == "needs a single element (equal spheres)"
     assert sheet.entries("electron_density")[0]["value"] == pytest.approx(3 / 0.295**3, rel=1e-12)
+
+
+def test_one_element_listed_twice_on_a_site_adds_up(tmp_path):
+    atom = "{element: Cu, position: [0, 0, 0], occupancy: 0.5}"
+    structure = f"lattice: fcc\na: {{value: 4 Å, from: here}}\natoms:\n  - {atom}\n  - {atom}"
+    sheet = crystal(tmp_path, "Cu", structure)
+    assert sheet.entries("atoms_per_cell")[0]["value"] == 4
+    full = structure.replace("occupancy: 0.5", "occupancy: 1")
+    assert crystal(tmp_path / "full", "Cu", full).entries("atoms_per_cell")[0]["value"] == 4

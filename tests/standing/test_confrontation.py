@@ -187,3 +187,39 @@ def test_a_threshold_that_names_nothing_is_a_fault(tmp_path):
     messages = [fault.message for fault in caught.value.faults]
     assert any("Did you mean 'degenerate_gas'?" in message for message in messages)
     assert any("Did you mean 'density'?" in message for message in messages)
+
+
+WARM = """\
+name: Warm gas
+formula: GaAs
+structure: {lattice: zincblende, a: {value: 5.653 Å, at: 300 K, from: here}}
+electrons: {density: {value: 1e17 1/cm³, from: here}, effective mass: 0.067, background permittivity: 12.9}
+measured:
+  resistivity: {value: 0.0125 Ω cm, at: 293 K, from: here}
+  thermal conductivity: {value: 100 W/(m K), at: 100 K, from: here}
+specimens:
+  - {name: F-9, form: film, thickness: 900 nm, specularity: 0, resistivity: {value: 0.02 Ω cm, at: 293 K}}
+"""
+
+
+def test_what_binds_a_material_binds_its_specimens(tmp_path):
+    sheet = handbook_of(tmp_path, warm=WARM)["warm"]
+    film = sheet.data["specimens"][0]["quantities"]
+    # T/T_F = 2.15: the lines that rest on a degenerate gas are outside, those that do not are not.
+    assert {film[id]["standing"] for id in ("film_resistivity", "film_resistivity_surface")} == {"outside"}
+    assert film["film_fermi_energy"]["standing"] == "unchecked"
+    assert held(sheet, "film_resistivity")[0]["standing"] == "outside"
+
+
+def test_where_the_model_cannot_be_taken_nothing_is_said_of_it(tmp_path):
+    sheet = handbook_of(tmp_path, warm=WARM)["warm"]
+    (entry,) = held(sheet, "electron_thermal_conductivity")
+    assert entry["standing"] == "unchecked" and "model" not in entry
+
+
+def test_the_thermopower_of_a_sheet_is_held_too(tmp_path):
+    text = WELL.replace("measured:", "measured:\n  thermopower: {value: -10 µV/K, at: 4.2 K, from: here}")
+    sheet = handbook_of(tmp_path, well=text)["well"]
+    (entry,) = held(sheet, "thermopower")
+    expected = -(math.pi**2) / 3 * 86.17333262 * 4.2 / sheet.si("fermi_temperature")
+    assert entry["model"] == pytest.approx(expected, rel=1e-9)
