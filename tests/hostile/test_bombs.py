@@ -10,6 +10,7 @@ from pathlib import Path
 
 import hostile.reading
 import pytest
+from filelock import FileLock
 from hostile.bombs import BOMBS, FILES, HARMLESS, NAMES, YAML
 
 TESTS = Path(__file__).parent.parent
@@ -39,8 +40,18 @@ def lay(folder: Path, files: dict) -> Path:
 
 @pytest.fixture(scope="module")
 def outcomes(tmp_path_factory) -> dict[str, dict]:
-    """What reading each bomb came to, by its name."""
-    ground = tmp_path_factory.mktemp("bombs")
+    """What reading each bomb came to, by its name; measured once for all workers of a test run."""
+    base = tmp_path_factory.getbasetemp()
+    shared = base.parent if "PYTEST_XDIST_WORKER" in os.environ else base
+    kept = shared / "bombs.json"
+    with FileLock(shared / "bombs.lock"):
+        if not kept.exists():
+            kept.write_text(json.dumps(measured(tmp_path_factory.mktemp("bombs"))))
+    return json.loads(kept.read_text())
+
+
+def measured(ground: Path) -> dict[str, dict]:
+    """Read each bomb in a process of its own."""
     folders = [lay(ground / str(number), files) for number, (files, _) in enumerate(BOMBS.values())]
     command = [sys.executable, hostile.reading.__file__, *folders]
     run = subprocess.run(command, capture_output=True, text=True, check=False, cwd=ground)
