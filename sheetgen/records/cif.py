@@ -27,10 +27,12 @@ if TYPE_CHECKING:
     import gemmi
 
 MAXIMUM_BYTES = 4_000_000
+MAXIMUM_BLOCKS = 1000
 MAXIMUM_OPERATIONS = 192
 MAXIMUM_ATOMS = 500
 
 _NAME = re.compile(r"[A-Za-z0-9][A-Za-z0-9._-]{0,79}\.cif", re.IGNORECASE)
+_HEAD = re.compile(r"(?:^|\s)data_", re.IGNORECASE)
 _CONSTANTS = {
     "a": "_cell_length_a",
     "b": "_cell_length_b",
@@ -77,6 +79,11 @@ def read_cif(node: Scalar, reader: Reader, folder: Path) -> Crystal | None:
 def _read(text: str, path: Path, reader: Reader) -> Crystal | None:
     from gemmi import cif
 
+    # The library compares each name with all before it: thousands of blocks would take seconds.
+    if (heads := len(_HEAD.findall(text))) > MAXIMUM_BLOCKS:
+        message = f"{heads} blocks; expected at most {MAXIMUM_BLOCKS}. Keep the block of this material alone."
+        reader.fault(Place(str(path)), message)
+        return None
     try:
         document = cif.read_string(text)
     except (ValueError, RuntimeError) as error:
