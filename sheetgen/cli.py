@@ -78,7 +78,7 @@ def _standing(folder: Path) -> Path:
         raise WrongWordError(f"{folder} is a file; expected the folder that holds it.")
     beside = folder.parent.iterdir() if folder.parent.is_dir() else ()
     guess = did_you_mean(folder.name, [entry.name for entry in beside if entry.is_dir()])
-    raise WrongWordError(f"There is no folder {folder}.{guess}")
+    raise WrongWordError(f"There is no folder {folder}.{guess or ' Make it, or name the one that holds the records.'}")
 
 
 def _file(path: Path) -> Path:
