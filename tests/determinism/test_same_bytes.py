@@ -82,19 +82,15 @@ def test_nothing_around_the_process_matters(tmp_path, usual):
     assert differing(usual, pressed(tmp_path, "\n".join(BEFORE.values()), **around)) == []
 
 
-each_alone = pytest.mark.skipif("SHEETGEN_EACH" not in os.environ, reason="SHEETGEN_EACH=1 tries each alone")
+if "SHEETGEN_EACH" in os.environ:  # each surrounding alone takes minutes; the test above tries all at once
 
+    @pytest.mark.parametrize("before", BEFORE)
+    def test_what_ran_before_does_not_matter(tmp_path, usual, before):
+        assert differing(usual, pressed(tmp_path, BEFORE[before])) == []
 
-@each_alone
-@pytest.mark.parametrize("before", BEFORE)
-def test_what_ran_before_does_not_matter(tmp_path, usual, before):
-    assert differing(usual, pressed(tmp_path, BEFORE[before])) == []
-
-
-@each_alone
-@pytest.mark.parametrize("around", AROUND)
-def test_what_surrounds_the_process_does_not_matter(tmp_path, usual, around):
-    assert differing(usual, pressed(tmp_path, **AROUND[around])) == []
+    @pytest.mark.parametrize("around", AROUND)
+    def test_what_surrounds_the_process_does_not_matter(tmp_path, usual, around):
+        assert differing(usual, pressed(tmp_path, **AROUND[around])) == []
 
 
 def test_files_beside_the_work_and_their_age_do_not_matter(tmp_path, usual):
@@ -125,13 +121,12 @@ def test_a_site_that_grew_is_the_same_as_one_pressed_at_once(tmp_path, usual):
     assert differing(usual, pressed(tmp_path)) == []
 
 
-@pytest.mark.parametrize("version", ["3.12", "3.13"])
-def test_other_versions_of_python_give_the_same_bytes(tmp_path, usual, version):
-    """Where SHEETGEN_PYTHONS names a folder of environments `3.12`, `3.13` …, each with sheetgen installed."""
-    python = Path(os.environ.get("SHEETGEN_PYTHONS", "/nonexistent")) / version / "bin" / "python"
-    if not python.exists():
-        pytest.skip(f"SHEETGEN_PYTHONS names no environment of Python {version}")
-    assert differing(usual, pressed(tmp_path, python=str(python))) == []
+if "SHEETGEN_PYTHONS" in os.environ:  # a folder of environments `3.12`, `3.13` …, each with sheetgen installed
+
+    @pytest.mark.parametrize("version", ["3.12", "3.13"])
+    def test_other_versions_of_python_give_the_same_bytes(tmp_path, usual, version):
+        python = Path(os.environ["SHEETGEN_PYTHONS"]) / version / "bin" / "python"
+        assert differing(usual, pressed(tmp_path, python=str(python))) == []
 
 
 def test_the_manifest_holds_the_hash_of_every_file_and_every_input(tmp_path, usual):

@@ -10,8 +10,7 @@ from xml.etree import ElementTree
 import pytest
 from hostile.handbooks import SHORT, write_hostile_handbook
 from hostile.vectors import VECTORS
-from support.browsing import FLAGS, pages_of, watched_page
-from support.tools import required_tool
+from support.browsing import pages_of, watched_page
 
 from sheetgen.pages.notes import notes
 from sheetgen.press import press
@@ -67,18 +66,6 @@ def site(tmp_path_factory) -> Path:
     return into
 
 
-@pytest.fixture(scope="module")
-def chromium():
-    """A browser of this module's own, as tests/browser starts it."""
-    program = required_tool("chromium", "chromium-browser", "google-chrome")
-    from playwright.sync_api import sync_playwright
-
-    with sync_playwright() as playwright:
-        running = playwright.chromium.launch(executable_path=program, args=FLAGS)
-        yield running
-        running.close()
-
-
 def opened(page, path: Path) -> list[str]:
     """What a page did and holds that it must not, after a reader has been all over it."""
     page.goto(path.as_uri())
@@ -88,11 +75,11 @@ def opened(page, path: Path) -> list[str]:
 
 
 @pytest.mark.parametrize("bypass_csp", [True, False], ids=["escaping alone", "with the policy"])
-def test_no_vector_runs_on_any_page(chromium, site, bypass_csp):
+def test_no_vector_runs_on_any_page(browser, site, bypass_csp):
     dialogs = []
     # Every page once without the policy, which must have nothing to do; with it, a share of all kinds.
     pages = pages_of(site)[:: 1 if bypass_csp else 5]
-    with watched_page(chromium, bypass_csp=bypass_csp) as (page, troubles):
+    with watched_page(browser, bypass_csp=bypass_csp) as (page, troubles):
         page.add_init_script(WATCH)
         page.on("dialog", lambda dialog: (dialogs.append(dialog.message), dialog.dismiss()))
         for path in pages:
@@ -101,17 +88,17 @@ def test_no_vector_runs_on_any_page(chromium, site, bypass_csp):
     assert dialogs == [] and len(pages) >= 5
 
 
-def test_the_watch_sees_what_runs(chromium, tmp_path):
+def test_the_watch_sees_what_runs(browser, tmp_path):
     page_of_vectors = tmp_path / "page.html"
     page_of_vectors.write_text("<script>hit()</script><img src=x onerror=hit()><a href=javascript:hit()>x</a>")
-    with watched_page(chromium) as (page, troubles):
+    with watched_page(browser) as (page, troubles):
         page.add_init_script(WATCH)
         found = opened(page, page_of_vectors)
     assert found.count("hit") >= 1 and "img onerror" in found and "a href=javascript:hit()" in found
     assert troubles
 
 
-def test_the_policy_refuses_what_an_escape_would_have_missed(chromium, site, tmp_path):
+def test_the_policy_refuses_what_an_escape_would_have_missed(browser, site, tmp_path):
     """The policy is the second wall: script, handlers and addresses that run are refused even where they stand."""
     page_text = (site / "index.html").read_text(encoding="utf-8")
     attacks = "".join(vector for vector in VECTORS if "<" in vector and "<!--" not in vector and "CDATA" not in vector)
@@ -119,7 +106,7 @@ def test_the_policy_refuses_what_an_escape_would_have_missed(chromium, site, tmp
     broken.write_text(page_text.replace("<main", "<script>hit()</script><img src=x onerror=hit()><main", 1)
                       .replace("</main>", attacks.replace("</", "<\\/") + "</main>"), encoding="utf-8")  # fmt: skip
     try:
-        with watched_page(chromium) as (page, troubles):
+        with watched_page(browser) as (page, troubles):
             page.add_init_script(WATCH)
             page.goto(broken.as_uri())
             page.evaluate("() => document.querySelectorAll('[href^=javascript]').forEach(link => link.click())")
@@ -146,8 +133,8 @@ def test_figures_hold_no_script(site):
         assert "@import" not in style and "//" not in style.replace("http://www.w3.org", "")
 
 
-def test_figures_open_in_the_browser_alone(chromium, site):
-    with watched_page(chromium) as (page, troubles):
+def test_figures_open_in_the_browser_alone(browser, site):
+    with watched_page(browser) as (page, troubles):
         page.add_init_script(WATCH)
         for path in sorted((site / "figures").rglob("*.svg"))[::25]:
             page.goto(path.as_uri())
