@@ -260,11 +260,7 @@ def draft_command(formula: str | None, cif: Path | None, materials: Path, name: 
         raise WrongWordError(str(error)) from error
     except FaultsError as error:
         return _at_fault(error.faults, as_json, "Nothing was written.")
-    if as_json:
-        _print_json(drafted.as_json())
-    else:
-        _list(drafted.lines(), err=False)
-    return DONE
+    return _printed(drafted, drafted.lines(), as_json)
 
 
 @commands.command(
@@ -297,11 +293,7 @@ def quote_command(material: str, quantity: str, at: float | None, materials: Pat
         raise WrongWordError(str(error)) from error
     except NotDerivedError as error:
         return _failed(str(error), RECORDS)
-    if as_json:
-        _print_json(quoted.as_json())
-    else:
-        _list(quoted.lines(), err=False)
-    return DONE
+    return _printed(quoted, quoted.lines(), as_json)
 
 
 @commands.command(
@@ -337,11 +329,7 @@ def errata_command(old: str, new: str, materials: Path, as_json: bool) -> int:
         return _at_fault(error.faults, as_json)
     except EditionError as error:
         raise WrongWordError(str(error)) from error
-    if as_json:
-        _print_json(found.as_json())
-    else:
-        _list(lines(found), err=False)
-    return DONE
+    return _printed(found, lines(found), as_json)
 
 
 @commands.command("galley", cls=Command, examples=["sheetgen galley materials", "sheetgen galley --port 0"])
@@ -417,6 +405,15 @@ def _fault_json(fault: Fault) -> dict[str, Any]:
 def _list(lines: Iterable[object], err: bool = True) -> None:
     for line in lines:
         click.echo(str(line), err=err)
+
+
+def _printed(result: Any, lines: Iterable[object], as_json: bool) -> int:
+    """Print what a command found, as JSON or in lines, and return that it is done."""
+    if as_json:
+        _print_json(result.as_json())
+    else:
+        _list(lines, err=False)
+    return DONE
 
 
 def _print_json(content: dict[str, Any]) -> None:

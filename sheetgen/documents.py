@@ -13,9 +13,7 @@ from sheetgen.handbook import Handbook
 from sheetgen.quantities.fingerprints import fingerprint
 from sheetgen.records.assembly import assembly
 from sheetgen.records.schema import record_schema
-from sheetgen.sheet import CONSTANTS, Sheet
-
-AXES = {"temperature": "K", "edge": "nm", "photon_energy": "eV"}
+from sheetgen.sheet import CONSTANTS, PRINTED_UNITS, Sheet
 
 
 def documents(handbook: Handbook, figures: Mapping[str, Sequence[Any]]) -> Iterator[tuple[str, bytes]]:
@@ -84,7 +82,7 @@ def _cells(sheet: Sheet) -> Iterator[tuple[str, str, dict]]:
             continue
         seen: set[str] = set()
         for position, entry in enumerate(stated):
-            axis = next(axis for axis in AXES if axis in entry)
+            axis = next(axis for axis in PRINTED_UNITS if axis in entry)
             named = position > 0 or axis != "temperature"
             name = f"{id}@{entry[axis]:g}" if named else id
             if name not in seen:  # a second resistivity at one temperature stays in the JSON alone

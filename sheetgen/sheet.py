@@ -13,6 +13,7 @@ from sheetgen.draws import Interval, draw_intervals
 from sheetgen.lookup import StatedNumber, find_number, stated_numbers
 from sheetgen.quantities import Definition, Registry
 from sheetgen.quantities.batch import input_titles
+from sheetgen.quantities.inputs import PHOTON_ENERGIES
 from sheetgen.quantities.structure import CELL_CONSTANTS, OF_THE_CELL
 from sheetgen.records import Imprint, Record, Specimen, Value
 from sheetgen.records.units import si_factor
@@ -80,14 +81,18 @@ class Row:
             return {}
         return draw_intervals(self.derived, self.row, self.derivation.draws, self.derivation.seed)
 
-    def published_entries(self, definition: Definition) -> list[int]:
-        """The entries of a quantity that are stated: present, and not only there for a measurement."""
+    @cached_property
+    def stated(self) -> dict[str, list[int]]:
+        """Quantity → its entries that are stated: present, and not only there for a measurement."""
+        return {id: self._stated(definition) for id, definition in self.definitions.items()}
+
+    def _stated(self, definition: Definition) -> list[int]:
         if definition.form != "number":
             return [0] if np.isfinite(self.derived.values[definition.id][self.row]).any() else []
         most = self.derived.entries(definition.id)
         limit = {
             "temperature": len(self.imprint.temperatures),
-            "photon_energy": 6,
+            "photon_energy": len(PHOTON_ENERGIES),
             "resistivity": most,
             "edge": most,
         }
@@ -99,7 +104,7 @@ class Row:
         """Quantity → entry → the confrontation that decides its standing."""
         held = {confrontation.quantity for confrontation in self.confrontations}
         return {
-            id: deciding(d, self.published_entries(d), self.confrontations, self.derived, self.row, self.imprint)
+            id: deciding(d, self.stated[d.id], self.confrontations, self.derived, self.row, self.imprint)
             for id, d in self.definitions.items()
             if id in held
         }
@@ -108,7 +113,7 @@ class Row:
         """The `quantities` of the data file: absent ones left out."""
         stated: dict[str, dict | list[dict]] = {}
         for id, definition in self.definitions.items():
-            entries = [self._entry(definition, entry) for entry in self.published_entries(definition)]
+            entries = [self._entry(definition, entry) for entry in self.stated[definition.id]]
             if entries:
                 listed = definition.listed_by is not None and self.specimen is None
                 stated[id] = entries if listed else entries[0]
@@ -119,7 +124,7 @@ class Row:
         for id, definition in self.definitions.items():
             decided = self.decided.get(id, {})
             groups: dict[str | tuple[str, int], list[int]] = {}
-            for entry in self.published_entries(definition):
+            for entry in self.stated[definition.id]:
                 standing = entry_standing(definition, entry, decided, self.limits)
                 # Each entry to scale has a factor of its own.
                 groups.setdefault((standing, entry) if standing == ADJUST else standing, []).append(entry)
@@ -142,7 +147,7 @@ class Row:
         return {
             id: self._why(definition)
             for id, definition in self.definitions.items()
-            if not self.published_entries(definition)
+            if not self.stated[definition.id]
         }
 
     def _entry(self, definition: Definition, entry: int) -> dict:
@@ -210,7 +215,7 @@ class Row:
         recalled = {id for id, value in self.record.inputs.items() if value.recalled}
         found = {}
         for id, definition in self.definitions.items():
-            entries = self.published_entries(definition)
+            entries = self.stated[definition.id]
             names = self.derived.plan.inputs_of(id)
             ids = [i for name in names for entry in entries for i in self._input_ids(name, definition, entry)]
             if on := tuple(dict.fromkeys(i for i in ids if i in recalled)):
